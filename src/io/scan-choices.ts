@@ -1,7 +1,8 @@
 /** The recipe's `scan` block: what the user states about a scan file; everything omitted is guessed. */
 
-export type AxisKind = 'wavelength' | 'energy' | 'shift';
-export type Medium = 'air' | 'vacuum';
+import type { AxisKind, Medium } from '../science/axis';
+
+export type { AxisKind, Medium };
 export type LengthUnit = 'nm' | 'um' | 'mm' | 'm' | 'angstrom';
 
 export interface AxisChoice {

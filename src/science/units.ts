@@ -7,7 +7,7 @@
  * hc, eV·nm: h = 6.626 070 15e-34 J·s, c = 299 792 458 m/s, e = 1.602 176 634e-19 C, all exact by
  * definition (SI 2019, CODATA 2018). The literal is the double nearest to the exact quotient.
  */
-export const hcEvNm = 1239.8419843320026;
+export const hcEvNm = 1239.8419843320025;
 
 /** Wavenumber of a photon of 1 eV, cm⁻¹: 10⁷/hc. */
 export const cm1PerEv = 1e7 / hcEvNm;

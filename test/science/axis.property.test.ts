@@ -11,7 +11,10 @@ const energies = fc
   .map((steps) => {
     const values: number[] = [];
     let at = 0.3;
-    for (const step of steps) values.push((at += step));
+    for (const step of steps) {
+      at += step;
+      values.push(at);
+    }
     return values;
   });
 

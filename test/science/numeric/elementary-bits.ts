@@ -85,7 +85,7 @@ export const pinnedElementaryBits = [
   'tan 0072aab4894a4495',
   'sinh b77949db14077932',
   'cosh 9bba61dd59b22f2e',
-  'tanh c039f380e4ba0d04',
+  'tanh f75215ba13f022e0',
   'atan e87e2836996a84a7',
   'atan2 e81c5c28c85fe99d',
   'cbrt f2f9be6d590ada12',

@@ -1,8 +1,15 @@
 /** What detection found in a file, why, and what could be instead; and the plan by which slabs are read. */
 import type { RimlightError } from '../errors';
 import type { CountsArray, ScanMeta } from '../science/scan';
-import type { FormatName } from './container';
+import type { Container, FormatName } from './container';
 import type { ScanChoices } from './scan-choices';
+
+/** A file the user gave beside the scan: an axis, a height map. Opened by its caller, who also closes it. */
+export interface Companion {
+  /** file name without folder */
+  readonly name: string;
+  readonly container: Container;
+}
 
 /** The things guessed while reading, in the order they are shown. */
 export type GuessField =

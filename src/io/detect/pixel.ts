@@ -1,0 +1,345 @@
+/** How far columns and rows lie apart: stated, from positions in the file, or from its attributes. */
+import { RimlightError } from '../../errors';
+import { formatLength } from '../../science/format';
+import type { PositionAxis } from '../../science/scan';
+import type { ScanChoices } from '../scan-choices';
+import type { Guess } from '../scan-plan';
+import type { RoledVector } from './agreement';
+import { shown } from './roles';
+import type { Saying } from './sayings';
+import { nameOf, nmIn, spaced } from './words';
+
+export interface FoundPixel {
+  readonly x: PositionAxis;
+  readonly y: PositionAxis;
+  readonly guess: Guess;
+  readonly warnings: readonly string[];
+  /** for the resolved scan block; undefined where the file says it better than the block can */
+  readonly choice: ScanChoices['pixel'];
+}
+
+export interface PixelQuestion {
+  readonly nx: number;
+  readonly ny: number;
+  readonly stated: ScanChoices['pixel'];
+  readonly vectors: readonly RoledVector[];
+  /** what the file calls the cube's x and y axes; null when it does not say */
+  readonly xName: string | null;
+  readonly yName: string | null;
+  readonly sayings: readonly Saying[];
+  /** path of the cube and its folder, whose attributes count first */
+  readonly cubePath: string;
+}
+
+interface Found {
+  readonly axis: PositionAxis;
+  readonly evidence: string;
+}
+
+/** @throws RimlightError 'recipe' - when a stated pixel is no distance */
+export function findPixel(question: PixelQuestion): FoundPixel {
+  const { stated, nx, ny } = question;
+  const xs = positionsAlong(question, 'x');
+  const ys = positionsAlong(question, 'y');
+  if (stated !== undefined) return statedPixel(question, stated, xs, ys);
+  const points = scatteredPoints(question);
+  if (points !== null) return points;
+  const said = xs === null && ys === null ? pixelOfSayings(question) : null;
+  const x = xs?.axis ?? said?.x ?? unknownAxis('x');
+  const y = ys?.axis ?? said?.y ?? unknownAxis('y');
+  const isKnown = x.unit !== 'px' || y.unit !== 'px';
+  const evidence = [xs?.evidence, ys?.evidence, said?.evidence].filter((one) => one !== undefined);
+  const warnings = [...(nx > 1 ? unevenness(x) : []), ...(ny > 1 ? unevenness(y) : [])];
+  return {
+    x,
+    y,
+    warnings,
+    choice: choiceOf(x, y, nx, ny),
+    guess: {
+      field: 'pixel',
+      label: pixelLabel(x, y, nx, ny),
+      source: isKnown ? 'file' : 'absent',
+      evidence:
+        evidence.length > 0
+          ? evidence.join('; ')
+          : nx * ny === 1
+            ? 'one spectrum has no pitch'
+            : 'nothing in the file gives positions; lengths are shown in pixels',
+      alternatives: bareAlternatives(xs, ys, question),
+    },
+  };
+}
+
+function unknownAxis(label: string): PositionAxis {
+  return { label, unit: 'px', isLength: false, pitch: 1, values: null };
+}
+
+function statedPixel(
+  question: PixelQuestion,
+  stated: NonNullable<ScanChoices['pixel']>,
+  xs: Found | null,
+  ys: Found | null,
+): FoundPixel {
+  const x = statedAxis('x', stated.x, stated.unit, xs);
+  const y = statedAxis('y', stated.y, stated.unit, ys);
+  return {
+    x,
+    y,
+    warnings: [],
+    choice: stated,
+    guess: {
+      field: 'pixel',
+      label: pixelLabel(x, y, question.nx, question.ny),
+      source: 'stated',
+      evidence: 'stated by the recipe',
+      alternatives: [],
+    },
+  };
+}
+
+/** Positions of the file keep their values and name where their pitch and unit are the stated ones. */
+function statedAxis(
+  label: 'x' | 'y',
+  step: number,
+  unit: string,
+  inFile: Found | null,
+): PositionAxis {
+  const perNm = nmIn(unit);
+  const isWrong =
+    perNm === null ? !Number.isFinite(step) || step === 0 : !(step > 0) || !Number.isFinite(step);
+  if (isWrong) {
+    throw new RimlightError('recipe', {
+      what: `a pixel cannot be ${step} ${unit} apart in ${label}`,
+      where: `scan.pixel.${label}`,
+      hint: 'State the distance from one pixel to the next.',
+    });
+  }
+  const axis: PositionAxis = {
+    label,
+    unit: perNm === null ? unit : 'nm',
+    isLength: perNm !== null,
+    pitch: perNm === null ? step : roundedTo12(step * perNm),
+    values: null,
+  };
+  const own = inFile?.axis;
+  if (own === undefined || own.unit !== axis.unit) return axis;
+  return Math.abs(own.pitch - axis.pitch) <= 1e-9 * Math.abs(axis.pitch) ? own : axis;
+}
+
+/** 0.1 µm is 100 nm, not 100.00000000000001. */
+function roundedTo12(value: number): number {
+  return Number(value.toPrecision(12));
+}
+
+function positionsAlong(question: PixelQuestion, along: 'x' | 'y'): Found | null {
+  const length = along === 'x' ? question.nx : question.ny;
+  if (length < 2) return null;
+  const name = along === 'x' ? question.xName : question.yName;
+  const fitting = question.vectors.filter(
+    ({ vector, role }) =>
+      vector.file === null &&
+      vector.values.length === length &&
+      vector.entry.path !== question.cubePath &&
+      vector.facts.finite === length &&
+      (role.kind === 'position' ||
+        role.kind === 'ramp' ||
+        role.kind === 'pixels' ||
+        role.kind === 'scale'),
+  );
+  const isNamed = ({ vector }: RoledVector): boolean =>
+    name !== null && name !== '.' && nameOf(vector.entry.path) === name;
+  const own =
+    fitting.find(isNamed) ??
+    fitting.find(({ role }) => role.kind === 'position' && role.along === along) ??
+    lonePosition(fitting, question, along);
+  return own === undefined ? null : positions(own, along);
+}
+
+/** A gate voltage or a time along the only axis of space: no name says x, but nothing else is as long. */
+function lonePosition(
+  fitting: readonly RoledVector[],
+  { nx, ny }: PixelQuestion,
+  along: 'x' | 'y',
+): RoledVector | undefined {
+  if (nx > 1 && ny > 1) return undefined;
+  const free = fitting.filter(
+    ({ vector, role }) =>
+      vector.facts.direction !== 'mixed' &&
+      (role.kind === 'ramp' ||
+        (role.kind === 'position' && (role.along === null || role.along === along))),
+  );
+  return free.length === 1 ? free[0] : undefined;
+}
+
+function positions({ vector, role }: RoledVector, along: 'x' | 'y'): Found | null {
+  const { facts, values } = vector;
+  if (facts.direction === 'mixed') return null;
+  const unit = vector.unit?.unit ?? null;
+  const perNm = unit === null ? null : nmIn(unit);
+  const step = Math.abs(facts.last - facts.first) / (values.length - 1);
+  const isCalled = role.kind === 'position' && role.along !== null;
+  const label = isCalled ? along : nameOf(vector.entry.path);
+  const evidence = `${vector.label}, ${values.length} values from ${shown(facts.first)} to ${shown(facts.last)}`;
+  if (perNm !== null) {
+    const nm = values.map((value) => roundedTo12(value * perNm));
+    const pitch = roundedTo12(step * perNm);
+    const axis = { label, unit: 'nm', isLength: true, pitch, values: nm };
+    return { axis, evidence: `${evidence}, unit ${unit} by ${vector.unit?.from ?? 'its name'}` };
+  }
+  if (unit === null || unit === 'px') {
+    if (isCalled || facts.isIndex) {
+      const why = facts.isIndex ? 'pixel numbers' : 'without a unit';
+      return { axis: unknownAxis(along), evidence: `${evidence}, ${why}` };
+    }
+    const axis = { label, unit: '', isLength: false, pitch: roundedTo12(step), values };
+    return { axis, evidence: `${evidence}, without a unit` };
+  }
+  const axis = { label, unit, isLength: false, pitch: roundedTo12(step), values };
+  return { axis, evidence };
+}
+
+/** A line of spectra whose x and y wander is no line in space: points, kept in the file's order. */
+function scatteredPoints(question: PixelQuestion): FoundPixel | null {
+  const { nx, ny } = question;
+  if (Math.min(nx, ny) !== 1 || Math.max(nx, ny) < 2) return null;
+  const length = Math.max(nx, ny);
+  const along = (which: 'x' | 'y'): RoledVector | undefined =>
+    question.vectors.find(
+      ({ vector, role }) =>
+        vector.file === null &&
+        role.kind === 'position' &&
+        role.along === which &&
+        vector.values.length === length,
+    );
+  const x = along('x');
+  const y = along('y');
+  if (x === undefined || y === undefined) return null;
+  const point: PositionAxis = {
+    label: 'point',
+    unit: 'px',
+    isLength: false,
+    pitch: 1,
+    values: null,
+  };
+  return {
+    x: nx > 1 ? point : unknownAxis('x'),
+    y: ny > 1 ? point : unknownAxis('y'),
+    choice: undefined,
+    warnings: [
+      `The ${length} spectra lie at scattered positions (${x.vector.label}, ${y.vector.label}), not on a grid: they are shown side by side in the file’s order.`,
+    ],
+    guess: {
+      field: 'pixel',
+      label: `${length} scattered points`,
+      source: 'file',
+      evidence: `${x.vector.label} and ${y.vector.label} give a position for each spectrum`,
+      alternatives: [],
+    },
+  };
+}
+
+const pitchWords =
+  /^((pixel|px) (size|pitch|spacing|step|width|height)|(step|scan step) ?(size|width|pitch)?|pitch|spacing|resolution|(x|y) (step|pitch|spacing|resolution|pixel size)|pixel)( (x|y))?( (nm|um|µm|mm|m))?$/;
+
+/** Pitch from attributes of the cube first, then of its folders, then of the file. */
+function pixelOfSayings(
+  question: PixelQuestion,
+): { x: PositionAxis; y: PositionAxis; evidence: string } | null {
+  const usable = question.sayings
+    .filter(
+      ({ words, number, unit }) =>
+        pitchWords.test(words) && number > 0 && unit !== null && nmIn(unit) !== null,
+    )
+    .sort((a, b) => closeness(b, question.cubePath) - closeness(a, question.cubePath));
+  const sayingOf = (along: 'x' | 'y'): Saying | undefined =>
+    usable.find(({ words }) => words.split(' ').includes(along)) ??
+    usable.find(({ words }) => !/\b[xy]\b/.test(words) && !/\b(height|width)\b/.test(words)) ??
+    usable.find(({ words }) => words.includes(along === 'x' ? 'pixel width' : 'pixel height'));
+  const sx = sayingOf('x');
+  const sy = sayingOf('y') ?? sx;
+  if (sx === undefined || sy === undefined) return null;
+  const axisOf = (label: 'x' | 'y', { numbers, unit }: Saying): PositionAxis => {
+    const pair = numbers.length === 2 && numbers[0] === numbers[1];
+    const step = pair || numbers.length < 2 ? numbers[0] : Number.NaN;
+    return {
+      label,
+      unit: 'nm',
+      isLength: true,
+      pitch: roundedTo12(step * (nmIn(unit ?? '') ?? 1)),
+      values: null,
+    };
+  };
+  const x = axisOf('x', sx);
+  const y = axisOf('y', sy);
+  // A pair of two different numbers does not say which is x.
+  if (Number.isNaN(x.pitch) || Number.isNaN(y.pitch)) return null;
+  return {
+    x,
+    y,
+    evidence: `the file states ${sx === sy ? sx.shown : `${sx.shown} and ${sy.shown}`}`,
+  };
+}
+
+function closeness({ of }: Saying, cubePath: string): number {
+  return cubePath === of ? 1e6 : cubePath.startsWith(of) ? of.length : 0;
+}
+
+function unevenness(axis: PositionAxis): readonly string[] {
+  const { values, pitch } = axis;
+  if (values === null) return [];
+  let worst = 0;
+  for (let i = 1; i < values.length; i++) {
+    worst = Math.max(worst, Math.abs(Math.abs(values[i] - values[i - 1]) - pitch));
+  }
+  if (worst <= 0.02 * pitch) return [];
+  return [
+    `${axis.label} is not evenly spaced: steps differ by up to ${shown(worst)} ${axis.unit} from the mean of ${shown(pitch)} ${axis.unit}, which maps are drawn with.`,
+  ];
+}
+
+/** x and y without a unit: what they would be in the usual ones. */
+function bareAlternatives(
+  xs: Found | null,
+  ys: Found | null,
+  question: PixelQuestion,
+): Guess['alternatives'] {
+  const stepOf = (along: 'x' | 'y'): number | null => {
+    const own = question.vectors.find(
+      ({ vector, role }) =>
+        role.kind === 'position' &&
+        role.along === along &&
+        vector.unit === null &&
+        vector.values.length === (along === 'x' ? question.nx : question.ny),
+    );
+    if (own === undefined || own.vector.facts.isIndex || own.vector.values.length < 2) return null;
+    return roundedTo12(
+      Math.abs(own.vector.facts.last - own.vector.facts.first) / (own.vector.values.length - 1),
+    );
+  };
+  if (xs === null && ys === null) return [];
+  const x = stepOf('x') ?? stepOf('y');
+  const y = stepOf('y') ?? x;
+  if (x === null || y === null || !(x > 0) || !(y > 0)) return [];
+  return (['nm', 'um'] as const).map((unit) => ({
+    label: `${shown(x)} × ${shown(y)} ${unit === 'um' ? 'µm' : unit}`,
+    evidence: 'positions of the file without a unit',
+    choice: { pixel: { x, y, unit } },
+  }));
+}
+
+function pixelLabel(x: PositionAxis, y: PositionAxis, nx: number, ny: number): string {
+  const one = (axis: PositionAxis): string =>
+    axis.isLength ? formatLength(axis.pitch) : `${shown(axis.pitch)} ${axis.unit}`.trim();
+  if (nx * ny === 1) return '–';
+  if (ny === 1) return x.label === 'x' ? one(x) : `${one(x)} along x (${spaced(x.label)})`;
+  if (nx === 1) return y.label === 'y' ? one(y) : `${one(y)} along y (${spaced(y.label)})`;
+  return x.unit === 'px' && y.unit === 'px' ? 'unknown' : `${one(x)} × ${one(y)}`;
+}
+
+/** The block has one unit for both directions; where the file has two, it is left to say so itself. */
+function choiceOf(x: PositionAxis, y: PositionAxis, nx: number, ny: number): ScanChoices['pixel'] {
+  if (nx * ny === 1) return undefined;
+  const [a, b] = ny === 1 ? [x, x] : nx === 1 ? [y, y] : [x, y];
+  if (!a.isLength || !b.isLength) return undefined;
+  return { x: a.pitch, y: b.pitch, unit: 'nm' };
+}

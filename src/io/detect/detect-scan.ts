@@ -2,46 +2,27 @@
  * From a file's arrays to a scan: which array is the cube, how its axes lie, what its spectral axis
  * means. Each thing found is a guess with its evidence and alternatives; what the recipe states wins.
  */
-import { isRimlightError, RimlightError } from '../../errors';
-import { type AxisScale, type RecordedAxis, recordAxis } from '../../science/axis';
-import { laserEvFrom } from '../../science/laser';
+import { RimlightError } from '../../errors';
+import type { RecordedAxis } from '../../science/axis';
 import type { ScanMeta } from '../../science/scan';
 import type { ArrayEntry, Container, ReadOptions } from '../container';
-import type { AxisChoice, ScanChoices } from '../scan-choices';
-import type { Companion, CubePlan, Guess, GuessField, Inspection, ScanPlan } from '../scan-plan';
-import { findAgreement, type RoledVector } from './agreement';
-import { type FoundAxis, findAxis, statedAxisLength } from './axis-source';
-import { entryLabel, type FoundCube, findCube } from './cube';
+import type { ScanChoices } from '../scan-choices';
+import type { Companion, CubePlan, GuessField, Inspection, ScanPlan } from '../scan-plan';
+import { statedAxisLength } from './axis-source';
+import { entryLabel, findCube } from './cube';
 import { findExposure, findSerpentine } from './exposure';
-import { type FoundHeight, findHeight, heightEntries } from './height';
-import { type FoundLaser, findLaser, laserGuess, missingLaser } from './laser';
-import { mediumSaid } from './medium';
+import { attempt, type Evidence, type Findings, note } from './findings';
+import { findHeight, heightEntries } from './height';
 import { findNexusSignal } from './nexus';
 import { findNoise, quantityOf } from './noise';
 import { type FoundOrder, findOrder } from './order';
-import { type FoundPixel, findPixel } from './pixel';
+import { findPixel } from './pixel';
+import { resolvedChoices } from './resolve';
 import { assignRoles } from './roles';
 import { sampleValuesOf } from './sample';
-import { readSayings, type Saying } from './sayings';
-import { type FoundScale, findMedium, findScale } from './scale';
+import { readSayings } from './sayings';
+import { findSpectral } from './spectral';
 import { readVectors } from './vectors';
-
-/** What the file offers, read once. */
-interface Evidence {
-  readonly container: Container;
-  readonly companions: readonly Companion[];
-  readonly choices: ScanChoices;
-  readonly fileName: string;
-  readonly vectors: readonly RoledVector[];
-  readonly sayings: readonly Saying[];
-}
-
-/** Guesses, problems and warnings as they come up. */
-interface Findings {
-  readonly guesses: Map<GuessField, Guess>;
-  readonly problems: RimlightError[];
-  readonly warnings: string[];
-}
 
 const fieldOrder: readonly GuessField[] = [
   'data',
@@ -190,7 +171,7 @@ async function findPlan(
     meta,
     cube: cubePlan(entry, order, spectral.recorded, serpentine.isSerpentine),
     height: height.plan,
-    resolved: resolvedChoices(evidence, {
+    resolved: resolvedChoices(choices, {
       cube,
       order,
       spectral,
@@ -202,135 +183,6 @@ async function findPlan(
   };
 }
 
-interface Spectral {
-  readonly recorded: RecordedAxis;
-  readonly laserEv: number | null;
-  readonly from: RoledVector | null;
-  readonly axisChoice: AxisChoice;
-  readonly laser: FoundLaser | null;
-}
-
-/** Axis, kind, unit, medium and laser, which lean on one another. */
-function findSpectral(
-  evidence: Evidence,
-  findings: Findings,
-  entry: ArrayEntry,
-  order: FoundOrder,
-  axisNames: readonly string[] | null,
-): Spectral | null {
-  const { container, companions, choices, fileName, sayings } = evidence;
-  const kAxis = order.order.indexOf('k');
-  const fileChannels = entry.shape[kAxis];
-  const vectors = evidence.vectors.filter(({ vector }) => vector.entry !== entry);
-  const stated = choices.axis ?? {};
-  const agreement = findAgreement(
-    vectors.filter(({ vector }) => vector.file === null && vector.values.length === fileChannels),
-  );
-  const laserIn = (isNeeded: boolean): FoundLaser | null =>
-    findLaser({ stated: choices.laser, sayings, agreement, fileName, isNeeded });
-  const statedLaser = attempt(findings, () => ({ laser: laserIn(false) }));
-  const axis = attempt(findings, () =>
-    findAxis({
-      container,
-      companions,
-      fileName,
-      fileChannels,
-      vectors,
-      stated,
-      axisName: axisNames?.[kAxis] ?? null,
-      agreement,
-      isLaserStated: statedLaser?.laser != null,
-    }),
-  );
-  if (axis === null) {
-    note(findings, missingGuess('axis', findings.problems.at(-1)?.what ?? ''));
-    if (statedLaser !== null) note(findings, laserGuess(statedLaser.laser, false));
-    return null;
-  }
-  noteAxis(findings, axis);
-  const answer = attempt(findings, () =>
-    findScale({ axis, stated, agreement, quantity: quantityOf(entry) }),
-  );
-  if (answer === null) return null;
-  if (answer.found === null) {
-    findings.problems.push(answer.problem);
-    note(findings, answer.kindGuess);
-    return null;
-  }
-  const scale = answer.found;
-  note(findings, scale.kindGuess);
-  note(findings, scale.unitGuess);
-  const isNeeded = scale.kind === 'shift';
-  const laser = statedLaser === null ? null : laserIn(isNeeded);
-  if (statedLaser !== null) note(findings, laserGuess(laser, isNeeded));
-  const { medium, guess } = findMedium(
-    scale.kind,
-    stated.medium,
-    agreement,
-    mediumSaid(axis.from?.vector.entry ?? null, sayings),
-    laser?.line.unit === 'nm',
-  );
-  note(findings, guess);
-  if (statedLaser === null) return null;
-  if (isNeeded && laser === null) {
-    findings.problems.push(missingLaser(axis.where));
-    return null;
-  }
-  const laserEv = laser === null ? null : laserEvFrom(laser.line, medium);
-  const recorded = attempt(findings, () =>
-    recordAxis(axis.values, axisScale(scale, medium, laserEv), axis.where),
-  );
-  if (recorded === null) return null;
-  if (recorded.droppedChannels > 0) {
-    findings.warnings.push(
-      `${recorded.droppedChannels} of ${fileChannels} channels have no axis value and are left out.`,
-    );
-  }
-  const usesMedium = guess.source !== 'absent' || stated.medium !== undefined;
-  const axisChoice: AxisChoice = {
-    ...axis.place,
-    kind: scale.kind,
-    unit: scale.unit,
-    ...(usesMedium ? { medium } : {}),
-  };
-  return { recorded, laserEv, from: axis.from, axisChoice, laser };
-}
-
-function axisScale(scale: FoundScale, medium: 'air' | 'vacuum', laserEv: number | null): AxisScale {
-  const { kind, unit } = scale;
-  if (kind === 'shift' && laserEv !== null) return { kind, unit: 'cm-1', laserEv };
-  if (kind === 'energy' && (unit === 'eV' || unit === 'meV' || unit === 'cm-1'))
-    return { kind, unit };
-  if (kind === 'wavelength' && (unit === 'nm' || unit === 'um' || unit === 'angstrom')) {
-    return { kind, unit, medium };
-  }
-  throw new RimlightError('fault', {
-    what: `no scale of ${kind} in ${unit}`,
-    where: '',
-    hint: 'Please report this.',
-  });
-}
-
-/** Runs one step; a problem the user can mend is listed, anything else is thrown on. */
-function attempt<T>(findings: Findings, step: () => T): T | null {
-  try {
-    return step();
-  } catch (error) {
-    if (!isRimlightError(error) || error.kind === 'fault' || error.kind === 'cancelled')
-      throw error;
-    findings.problems.push(error);
-    return null;
-  }
-}
-
-function note(findings: Findings, guess: Guess): void {
-  findings.guesses.set(guess.field, guess);
-}
-
-function missingGuess(field: GuessField, evidence: string): Guess {
-  return { field, label: 'unknown', source: 'missing', evidence, alternatives: [] };
-}
-
 function noteOrder(findings: Findings, found: FoundOrder, entry: ArrayEntry): void {
   const { order, source, evidence, alternatives, warning } = found;
   const words = { y: 'rows', x: 'columns', k: 'channels' } as const;
@@ -339,28 +191,6 @@ function noteOrder(findings: Findings, found: FoundOrder, entry: ArrayEntry): vo
     .join(' × ');
   note(findings, { field: 'order', label: `${order} · ${label}`, source, evidence, alternatives });
   if (warning !== null) findings.warnings.push(warning);
-}
-
-function noteAxis(findings: Findings, axis: FoundAxis): void {
-  const { label, source, evidence, alternatives, values } = axis;
-  const finite = values.filter(Number.isFinite);
-  const range =
-    finite.length === 0 ? 'no values' : `${brief(finite[0])} – ${brief(finite[finite.length - 1])}`;
-  const count =
-    finite.length === values.length
-      ? `${values.length} values`
-      : `${finite.length} of ${values.length} values`;
-  note(findings, {
-    field: 'axis',
-    label: `${label} · ${range}, ${count}`,
-    source,
-    evidence,
-    alternatives,
-  });
-}
-
-function brief(value: number): string {
-  return String(Number(value.toPrecision(7)));
 }
 
 /** HDF5 dimension labels, where the file has them. */
@@ -392,32 +222,6 @@ function cubePlan(
     kAxis: order.indexOf('k'),
     channels: recorded.channels,
     serpentine: isSerpentine,
-  };
-}
-
-interface Settled {
-  readonly cube: FoundCube;
-  readonly order: FoundOrder;
-  readonly spectral: Spectral;
-  readonly pixel: FoundPixel;
-  readonly height: FoundHeight;
-  readonly isSerpentine: boolean;
-  readonly exposureS: number | null;
-}
-
-/** Everything settled, as a scan block. What has no field there (a gate voltage along x) the file says itself. */
-function resolvedChoices({ choices }: Evidence, settled: Settled): ScanChoices {
-  const { cube, order, spectral, pixel, height, isSerpentine, exposureS } = settled;
-  return {
-    ...(cube.entry.path === '' ? {} : { data: cube.entry.path }),
-    order: order.order,
-    axis: spectral.axisChoice,
-    ...(pixel.choice === undefined ? {} : { pixel: pixel.choice }),
-    ...(spectral.laser === null ? {} : { laser: spectral.laser.line }),
-    serpentine: isSerpentine,
-    ...(exposureS === null ? {} : { exposure_s: exposureS }),
-    ...(choices.detector === undefined ? {} : { detector: choices.detector }),
-    ...(height.choice === undefined ? {} : { height: height.choice }),
   };
 }
 

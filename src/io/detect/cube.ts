@@ -70,7 +70,7 @@ export function findCube(question: CubeQuestion): FoundCube {
   if (best === undefined) throw noCube(question);
   return {
     entry: best.entry,
-    source: 'guess',
+    source: candidates.length === 1 ? 'file' : 'guess',
     evidence:
       candidates.length === 1
         ? `the only array that can hold spectra (${best.reasons.join(', ')})`
@@ -132,8 +132,8 @@ function rated(entry: ArrayEntry, question: CubeQuestion): Candidate {
   if (axis !== undefined) count(50, `one axis as long as ${axis.vector.label}`);
   if (likely.test(words)) count(20, `called “${nameOf(entry.path)}”`);
   if (unlikely.test(words)) count(-150, 'its name speaks of something derived');
-  if (background.test(words)) count(-60, 'its name speaks of a background');
   if (derived.test(words)) count(-8, 'already corrected');
+  else if (background.test(words)) count(-60, 'its name speaks of a background');
   if (rank < 3 && surface.test(words)) count(-120, 'its name speaks of a surface');
   if (/\braw\b/.test(words)) count(4, 'as the detector gave it');
   if (textAttribute(entry.attributes, 'interpretation') === 'spectrum')

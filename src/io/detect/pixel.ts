@@ -5,6 +5,7 @@ import type { PositionAxis } from '../../science/scan';
 import type { ScanChoices } from '../scan-choices';
 import type { Guess } from '../scan-plan';
 import type { RoledVector } from './agreement';
+import { pitchOfSayings, roundedTo12 } from './pitch';
 import { shown } from './roles';
 import type { Saying } from './sayings';
 import { nameOf, nmIn, spaced } from './words';
@@ -44,7 +45,8 @@ export function findPixel(question: PixelQuestion): FoundPixel {
   if (stated !== undefined) return statedPixel(question, stated, xs, ys);
   const points = scatteredPoints(question);
   if (points !== null) return points;
-  const said = xs === null && ys === null ? pixelOfSayings(question) : null;
+  const said =
+    xs === null && ys === null ? pitchOfSayings(question.sayings, question.cubePath) : null;
   const x = xs?.axis ?? said?.x ?? unknownAxis('x');
   const y = ys?.axis ?? said?.y ?? unknownAxis('y');
   const isKnown = x.unit !== 'px' || y.unit !== 'px';
@@ -124,11 +126,6 @@ function statedAxis(
   const own = inFile?.axis;
   if (own === undefined || own.unit !== axis.unit) return axis;
   return Math.abs(own.pitch - axis.pitch) <= 1e-9 * Math.abs(axis.pitch) ? own : axis;
-}
-
-/** 0.1 µm is 100 nm, not 100.00000000000001. */
-function roundedTo12(value: number): number {
-  return Number(value.toPrecision(12));
 }
 
 function positionsAlong(question: PixelQuestion, along: 'x' | 'y'): Found | null {
@@ -236,52 +233,6 @@ function scatteredPoints(question: PixelQuestion): FoundPixel | null {
       alternatives: [],
     },
   };
-}
-
-const pitchWords =
-  /^((pixel|px) (size|pitch|spacing|step|width|height)|(step|scan step) ?(size|width|pitch)?|pitch|spacing|resolution|(x|y) (step|pitch|spacing|resolution|pixel size)|pixel)( (x|y))?( (nm|um|µm|mm|m))?$/;
-
-/** Pitch from attributes of the cube first, then of its folders, then of the file. */
-function pixelOfSayings(
-  question: PixelQuestion,
-): { x: PositionAxis; y: PositionAxis; evidence: string } | null {
-  const usable = question.sayings
-    .filter(
-      ({ words, number, unit }) =>
-        pitchWords.test(words) && number > 0 && unit !== null && nmIn(unit) !== null,
-    )
-    .sort((a, b) => closeness(b, question.cubePath) - closeness(a, question.cubePath));
-  const sayingOf = (along: 'x' | 'y'): Saying | undefined =>
-    usable.find(({ words }) => words.split(' ').includes(along)) ??
-    usable.find(({ words }) => !/\b[xy]\b/.test(words) && !/\b(height|width)\b/.test(words)) ??
-    usable.find(({ words }) => words.includes(along === 'x' ? 'pixel width' : 'pixel height'));
-  const sx = sayingOf('x');
-  const sy = sayingOf('y') ?? sx;
-  if (sx === undefined || sy === undefined) return null;
-  const axisOf = (label: 'x' | 'y', { numbers, unit }: Saying): PositionAxis => {
-    const pair = numbers.length === 2 && numbers[0] === numbers[1];
-    const step = pair || numbers.length < 2 ? numbers[0] : Number.NaN;
-    return {
-      label,
-      unit: 'nm',
-      isLength: true,
-      pitch: roundedTo12(step * (nmIn(unit ?? '') ?? 1)),
-      values: null,
-    };
-  };
-  const x = axisOf('x', sx);
-  const y = axisOf('y', sy);
-  // A pair of two different numbers does not say which is x.
-  if (Number.isNaN(x.pitch) || Number.isNaN(y.pitch)) return null;
-  return {
-    x,
-    y,
-    evidence: `the file states ${sx === sy ? sx.shown : `${sx.shown} and ${sy.shown}`}`,
-  };
-}
-
-function closeness({ of }: Saying, cubePath: string): number {
-  return cubePath === of ? 1e6 : cubePath.startsWith(of) ? of.length : 0;
 }
 
 function unevenness(axis: PositionAxis): readonly string[] {

@@ -1,10 +1,10 @@
 /** On which scale the axis values are: kind, unit and medium, stated or read. */
 import { RimlightError } from '../../errors';
-import { type AxisKind, type AxisUnit, axisUnits, type Medium } from '../../science/axis';
+import { type AxisKind, type AxisUnit, axisUnits } from '../../science/axis';
 import type { AxisChoice } from '../scan-choices';
 import type { Alternative, Guess } from '../scan-plan';
 import type { Agreement } from './agreement';
-import type { FoundAxis } from './axis-source';
+import type { FoundAxis } from './axis-search';
 import { type ScaleReading, scaleOfNumbers } from './roles';
 import { vectorFacts } from './vectors';
 import { parseUnit } from './words';
@@ -221,48 +221,4 @@ function unknownScale({ axis }: ScaleQuestion, unit: AxisUnit | null): ScaleAnsw
         })),
     },
   };
-}
-
-/** Wavelengths in air or vacuum; also what a laser given in nm is read in. */
-export function findMedium(
-  kind: AxisKind | null,
-  stated: Medium | undefined,
-  agreement: Agreement,
-  fileSays: { readonly value: Medium; readonly evidence: string } | null,
-  isLaserInNm: boolean,
-): { readonly medium: Medium; readonly guess: Guess } {
-  const other = (medium: Medium): Medium => (medium === 'air' ? 'vacuum' : 'air');
-  const answer = (medium: Medium, source: Source, evidence: string) => ({
-    medium,
-    guess: {
-      field: 'medium' as const,
-      label: medium,
-      source,
-      evidence,
-      alternatives:
-        source === 'absent'
-          ? []
-          : [
-              {
-                label: other(medium),
-                evidence: 'moves a wavelength of 600 nm by 0.166 nm, its photon energy by 0.57 meV',
-                choice: { axis: { medium: other(medium) } },
-              },
-            ],
-    },
-  });
-  if (stated !== undefined) return answer(stated, 'stated', 'stated by the recipe');
-  if (kind !== 'wavelength' && !isLaserInNm) {
-    const { guess } = answer('air', 'absent', 'no wavelength is involved');
-    return { medium: 'air', guess: { ...guess, label: '–' } };
-  }
-  if (fileSays !== null) return answer(fileSays.value, 'file', fileSays.evidence);
-  if (agreement.medium !== null && kind === 'wavelength') {
-    return answer(agreement.medium.value, 'file', agreement.medium.evidence);
-  }
-  const whose =
-    kind === 'wavelength'
-      ? 'spectrographs are usually calibrated'
-      : 'lasers are usually named by their wavelength';
-  return answer('air', 'guess', `not stated; ${whose} in air (common practice)`);
 }

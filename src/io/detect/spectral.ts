@@ -5,13 +5,14 @@ import { laserEvFrom } from '../../science/laser';
 import type { ArrayEntry } from '../container';
 import type { AxisChoice } from '../scan-choices';
 import { findAgreement, type RoledVector } from './agreement';
-import { type FoundAxis, findAxis } from './axis-source';
+import type { FoundAxis } from './axis-search';
+import { findAxis } from './axis-source';
 import { attempt, type Evidence, type Findings, missingGuess, note } from './findings';
 import { type FoundLaser, findLaser, laserGuess, missingLaser } from './laser';
-import { mediumSaid } from './medium';
+import { findMedium, mediumSaid } from './medium';
 import { quantityOf } from './noise';
 import type { FoundOrder } from './order';
-import { type FoundScale, findMedium, findScale } from './scale';
+import { type FoundScale, findScale } from './scale';
 
 export interface Spectral {
   readonly recorded: RecordedAxis;

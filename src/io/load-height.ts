@@ -5,6 +5,16 @@ import type { Container, ReadOptions } from './container';
 import type { ScanPlan } from './scan-plan';
 
 /**
+ * The two axes of a map; a third of length one (the single page of a TIFF) does not count. Null for
+ * any other array.
+ */
+export function mapShape(shape: readonly number[]): readonly [number, number] | null {
+  const long = shape.length === 3 ? shape.toSpliced(shape[0] === 1 ? 0 : 2, 1) : shape;
+  const isMap = long.length === 2 && (shape.length === 2 || shape[0] === 1 || shape[2] === 1);
+  return isMap ? [long[0], long[1]] : null;
+}
+
+/**
  * Reads the plan's height map.
  *
  * A shift [x, y] says how many pixels the map lies to the right of and below the counts: the height
@@ -22,7 +32,8 @@ export async function loadHeight(
 ): Promise<PixelMap> {
   const { height, meta, cube } = plan;
   const entry = container.entries.find(({ path }) => path === height?.path);
-  if (height === null || entry === undefined) {
+  const shape = entry === undefined ? null : mapShape(entry.shape);
+  if (height === null || entry === undefined || shape === null) {
     throw new RimlightError('fault', {
       what: 'the plan’s height map is not in this file',
       where: meta.name,
@@ -30,12 +41,17 @@ export async function loadHeight(
     });
   }
   const { ny, nx } = meta.shape;
-  const stored = await container.read(entry.path, [0, 0], entry.shape, options);
+  const stored = await container.read(
+    entry.path,
+    entry.shape.map(() => 0),
+    entry.shape,
+    options,
+  );
   // A square map inside the scan file lies as the cube does; otherwise its shape tells.
-  const isSquare = entry.shape[0] === entry.shape[1];
+  const isSquare = shape[0] === shape[1];
   const isColumnsFirst = isSquare
     ? height.file === null && cube.xAxis >= 0 && cube.xAxis < cube.yAxis
-    : entry.shape[0] !== ny;
+    : shape[0] !== ny;
   const values = new Float64Array(ny * nx);
   for (let y = 0; y < ny; y++) {
     for (let x = 0; x < nx; x++) {

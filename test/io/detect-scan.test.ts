@@ -104,6 +104,12 @@ describe('the cube', () => {
     expect([four.plan, none.plan, empty.plan]).toEqual([null, null, null]);
   });
 
+  it('may be one spectrum without a name, even one that only rises', async () => {
+    const rising: FakeFile = { format: 'npy', arrays: { '': numbered(8) } };
+    const { meta } = planOf(await inspect(rising, { axis: { from: 1.8, to: 2, unit: 'eV' } }));
+    expect(meta.shape).toEqual({ ny: 1, nx: 1, nk: 8 });
+  });
+
   it('without a single number is refused', async () => {
     const data = new Float64Array(40).fill(Number.NaN);
     const { problems } = await inspect({

@@ -4,7 +4,7 @@ import { loadHeight } from '../../src/io/load-height';
 import { loadSlab } from '../../src/io/load-slab';
 import { previewScan } from '../../src/io/preview';
 import type { CountsArray } from '../../src/science/scan';
-import { fakeContainer, numbered } from './fake-container';
+import { fakeContainer, numbered, ramp } from './fake-container';
 import { makePlan } from './make-plan';
 
 describe('loadSlab', () => {
@@ -165,6 +165,14 @@ describe('loadHeight', () => {
   it('gives nanometres on the scan’s pixels', async () => {
     const { values } = await loadHeight(withHeight([0, 0], 1000), container);
     expect([...values]).toEqual([0, 1000, 2000, 10_000, 11_000, Number.NaN]);
+  });
+
+  it('reads the single page of a TIFF', async () => {
+    const page = fakeContainer({
+      format: 'TIFF',
+      arrays: { '/height': { shape: [1, 2, 3], data: ramp(6, 0, 1) } },
+    });
+    expect([...(await loadHeight(withHeight([0, 0]), page)).values]).toEqual([0, 1, 2, 3, 4, 5]);
   });
 
   it('turns a map kept as columns × rows', async () => {

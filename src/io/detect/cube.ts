@@ -96,7 +96,9 @@ function isAxis(entry: ArrayEntry, vectors: readonly RoledVector[]): boolean {
     ({ vector }) => vector.file === null && vector.entry.path === entry.path,
   );
   if (own === undefined) return false;
+  const isAlone = vectors.filter(({ vector }) => vector.file === null).length === 1;
   const { kind } = own.role;
+  if (isAlone && (kind === 'ramp' || kind === 'pixels')) return false;
   if (kind === 'scale' || kind === 'pixels' || kind === 'position') return true;
   if (kind !== 'ramp') return false;
   // Of unnamed columns that all run one way, the first is the axis.

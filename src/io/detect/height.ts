@@ -1,6 +1,7 @@
 /** The height map of the same area: stated, in the scan file, or a companion of its shape. */
 import { RimlightError } from '../../errors';
 import type { ArrayEntry, Container } from '../container';
+import { mapShape } from '../load-height';
 import type { LengthUnit, ScanChoices } from '../scan-choices';
 import type { Alternative, Companion, Guess, HeightPlan } from '../scan-plan';
 import { assertCompanion } from './axis-source';
@@ -82,9 +83,7 @@ function candidates(question: HeightQuestion): readonly Candidate[] {
       evidence: `${entry.path} is a map of ${entry.shape.join(' × ')} whose name or unit is that of a height`,
     }));
   const beside = companions.flatMap(({ name, container: companion }) => {
-    const maps = companion.entries.filter(
-      (entry) => entry.shape.length === 2 && isShape(entry, question),
-    );
+    const maps = companion.entries.filter((entry) => isShape(entry, question));
     const entry = bestOf(maps);
     if (entry === undefined || otherMaps.test(spaced(`${name} ${entry.path}`))) return [];
     return [
@@ -103,7 +102,9 @@ function bestOf(maps: readonly ArrayEntry[]): ArrayEntry | undefined {
 }
 
 /** rows × columns, or columns × rows where the cube itself is kept that way */
-function isShape({ shape }: ArrayEntry, { ny, nx }: HeightQuestion): boolean {
+function isShape(entry: ArrayEntry, { ny, nx }: HeightQuestion): boolean {
+  const shape = mapShape(entry.shape);
+  if (shape === null) return false;
   return (shape[0] === ny && shape[1] === nx) || (shape[0] === nx && shape[1] === ny);
 }
 
@@ -126,11 +127,11 @@ function statedMap(
   const entries = companion === null ? container.entries : companion.container.entries;
   const entry = isOurs
     ? entries.find(({ path }) => path.replace(/^\//, '') === named.replace(/^\//, ''))
-    : (bestOf(entries.filter((one) => one.shape.length === 2 && isShape(one, question))) ??
+    : (bestOf(entries.filter((one) => isShape(one, question))) ??
       entries.find(({ shape }) => shape.length === 2) ??
       entries[0]);
   if (entry === undefined && isOurs) throw unknownName(named, where, container, fileName);
-  if (entry === undefined || entry.shape.length !== 2 || !isShape(entry, question)) {
+  if (entry === undefined || !isShape(entry, question)) {
     throw new RimlightError('recipe', {
       what: `the height map ${named} is ${entry === undefined ? 'empty' : entryLabel(entry)}, and the scan has ${ny} rows of ${nx} pixels`,
       where,
@@ -159,7 +160,7 @@ function answer(
     plan: { file, path: entry.path, unitNm: nmIn(unit) ?? 1, shiftPx },
     choice: { ...place, unit, shift_px: shiftPx },
     warnings:
-      entry.shape[0] === question.ny || (file === null && question.isColumnsFirst)
+      mapShape(entry.shape)?.[0] === question.ny || (file === null && question.isColumnsFirst)
         ? []
         : [`The height map ${file ?? entry.path} is kept as columns × rows and is turned.`],
     guess: {

@@ -29,9 +29,9 @@ export function pitchOfSayings(
   const sx = sayingOf('x');
   const sy = sayingOf('y') ?? sx;
   if (sx === undefined || sy === undefined) return null;
-  const axisOf = (label: 'x' | 'y', { numbers, unit }: Saying): PositionAxis => {
+  const axisOf = (label: 'x' | 'y', { number, numbers, unit }: Saying): PositionAxis => {
     const pair = numbers.length === 2 && numbers[0] === numbers[1];
-    const step = pair || numbers.length < 2 ? numbers[0] : Number.NaN;
+    const step = pair || numbers.length < 2 ? number : Number.NaN;
     return {
       label,
       unit: 'nm',

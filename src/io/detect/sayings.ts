@@ -68,7 +68,7 @@ function saying(key: string, value: AttributeValue, unitText: string | null, of:
   return {
     words: spaced(nameOf(key)),
     shown: `${place} = ${text}${unitText === null ? '' : ` ${unitText}`}`,
-    number: numbers[0] ?? Number.NaN,
+    number: Number.isFinite(numbers[0]) ? numbers[0] : Number.NaN,
     numbers,
     unit,
     text,

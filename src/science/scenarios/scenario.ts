@@ -33,6 +33,7 @@ export interface SampleTruth {
 /** A made scan as a file holds it; spectral arrays run toward longer wavelength. */
 export interface SampleScan {
   readonly name: string;
+  readonly seed: number;
   readonly shape: ScanShape;
   /** (ny, nx, nk), C order, channels in ascending wavelength */
   readonly counts: Uint16Array;
@@ -103,6 +104,7 @@ export function generateScenario(
   const { counts, spikes } = record(plan, seed, onProgress);
   return {
     name: plan.name,
+    seed,
     shape: plan.shape,
     counts,
     wavelengthAirNm: plan.axis.wavelengthAirNm,

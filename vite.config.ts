@@ -1,7 +1,8 @@
 /// <reference types="vitest/config" />
+import { mkdirSync, writeFileSync } from 'node:fs';
 import { fileURLToPath } from 'node:url';
 import react from '@vitejs/plugin-react';
-import { defineConfig } from 'vite';
+import { defineConfig, type Plugin, runnerImport } from 'vite';
 
 const fromRoot = (path: string): string => fileURLToPath(new URL(path, import.meta.url));
 
@@ -10,6 +11,23 @@ const isolation = {
   'Cross-Origin-Opener-Policy': 'same-origin',
   'Cross-Origin-Embedder-Policy': 'require-corp',
 };
+
+/** Writes the recipe's JSON Schema into public/ before it is served or copied; the schema is code, the file is not kept. */
+function recipeSchemaFile(): Plugin {
+  return {
+    name: 'recipe-schema-file',
+    apply: (_, { command }) => command === 'build' || process.env.VITEST === undefined,
+    async buildStart() {
+      const { module } = await runnerImport<typeof import('./src/recipe/json-schema')>(
+        fromRoot('src/recipe/json-schema.ts'),
+        { configFile: false, logLevel: 'warn' },
+      );
+      mkdirSync(fromRoot('public'), { recursive: true });
+      const text = `${JSON.stringify(module.recipeJsonSchema(), null, 2)}\n`;
+      writeFileSync(fromRoot('public/recipe.schema.json'), text);
+    },
+  };
+}
 
 /** `--mode cli` builds the command line and its worker for Node, `--mode bench` the measurements; otherwise the app. */
 export default defineConfig(({ mode }) => {
@@ -34,16 +52,33 @@ export default defineConfig(({ mode }) => {
     };
   }
   return {
-    plugins: [react()],
+    plugins: [react(), recipeSchemaFile()],
     base: './',
     worker: { format: 'es' as const },
     server: { headers: isolation },
     build: { outDir: 'dist/app', target: 'es2022', emptyOutDir: true },
     test: {
-      include: ['test/**/*.test.ts', 'test/**/*.test.tsx'],
-      exclude: ['test/browser/**', 'node_modules/**'],
       environment: 'node',
       testTimeout: 60_000,
+      projects: [
+        {
+          extends: true,
+          test: {
+            name: 'unit',
+            include: ['test/**/*.test.ts', 'test/**/*.test.tsx'],
+            exclude: ['test/browser/**', 'test/cli/**', 'node_modules/**'],
+          },
+        },
+        {
+          extends: true,
+          // These run the built program, so there must be one; it is built where sources are newer.
+          test: {
+            name: 'cli',
+            include: ['test/cli/**/*.test.ts'],
+            globalSetup: ['test/cli/ensure-built.ts'],
+          },
+        },
+      ],
     },
   };
 });

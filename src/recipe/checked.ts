@@ -1,6 +1,6 @@
 /** The door of every edit: a part of a recipe is checked before it goes in. */
 import type * as z from 'zod';
-import { formatPath, type PathParts, recipeError, wrongValue } from './problems';
+import { formatPath, joinPaths, type PathParts, recipeError, wrongValue } from './problems';
 import { type DeepReadonly, isRecord } from './schema-parts';
 import { schemaProblems } from './schema-problems';
 
@@ -18,13 +18,11 @@ export function ensureFits<T>(
   const problems = schemaProblems(schema, value);
   if (problems.length > 0) {
     const at = formatPath(path);
-    throw recipeError(problems.map((problem) => ({ ...problem, path: joined(at, problem.path) })));
+    throw recipeError(
+      problems.map((problem) => ({ ...problem, path: joinPaths(at, problem.path) })),
+    );
   }
   return value as DeepReadonly<T>;
-}
-
-function joined(base: string, path: string): string {
-  return path === '' || path.startsWith('[') ? base + path : `${base}.${path}`;
 }
 
 /**

@@ -1,8 +1,8 @@
 /**
  * What each derived map depends on, and the key its result is kept under: equal keys, equal numbers.
  * A key is a hash of the scan's own hash and of the parts of the recipe that the map is made from,
- * with defaults filled in; so editing one band leaves the results of the others in place, and names,
- * pins, blend and title never matter.
+ * so editing one band leaves the results of the others in place, and band names, pins, blend and
+ * title never matter.
  */
 import { sha256 } from '@noble/hashes/sha2.js';
 import { bytesToHex, utf8ToBytes } from '@noble/hashes/utils.js';
@@ -104,9 +104,8 @@ function strainParts(
   const sourceName = parseMapName(source);
   if (sourceName === null) throw noSuchMap(source);
   const region = recipe.regions?.find((one) => one.name === unstrainedRegion(block.unstrained));
-  const { name: _, ...place } = region ?? { name: '' };
-  const unstrained = region === undefined ? block.unstrained : place;
-  return [`strain.${method}`, { ...gauge, unstrained }, ...ownParts(sourceName, source, recipe)];
+  const own = region === undefined ? [gauge] : [gauge, region];
+  return [`strain.${method}`, ...own, ...ownParts(sourceName, source, recipe)];
 }
 
 /** What the numbers of a band come from: not its name, and not the order its ends were written in. */

@@ -4,37 +4,45 @@ import { offeredMaps } from './offered-maps';
 import type { Blend, Recipe, Strain } from './schema';
 import { unstrainedRegion } from './strain-block';
 
-/** The recipe with every map name passed through `rename`; unchanged parts are shared. */
+/** The recipe with every map name passed through `rename`; parts without such a name are shared. */
 export function withSources(recipe: Recipe, rename: (source: string) => string): Recipe {
   const { blend, strain, features } = recipe;
+  const channels = blend && renamedEach(blend.channels, rename);
   return {
     ...recipe,
-    ...(blend === undefined
+    ...(blend === undefined || channels === undefined || channels === blend.channels
       ? {}
-      : { blend: { ...blend, channels: renamed(blend.channels, rename) } }),
+      : { blend: { ...blend, channels } }),
     ...(strain === undefined ? {} : { strain: renamedStrain(strain, rename) }),
-    ...(features === undefined
-      ? {}
-      : { features: { ...features, source: rename(features.source) } }),
+    ...(features === undefined ? {} : { features: renamed(features, rename) }),
   };
 }
 
-function renamed<T extends { readonly source: string }>(
+interface Sourced {
+  readonly source: string;
+}
+
+function renamed<T extends Sourced>(entry: T, rename: (source: string) => string): T {
+  const source = rename(entry.source);
+  return source === entry.source ? entry : { ...entry, source };
+}
+
+function renamedEach<T extends Sourced>(
   entries: readonly T[],
   rename: (source: string) => string,
 ): readonly T[] {
-  return entries.map((entry) => {
-    const source = rename(entry.source);
-    return source === entry.source ? entry : { ...entry, source };
-  });
+  const all = entries.map((entry) => renamed(entry, rename));
+  return all.every((entry, index) => entry === entries[index]) ? entries : all;
 }
 
 function renamedStrain(strain: Strain, rename: (source: string) => string): Strain {
-  const { pl, raman } = strain;
+  const pl = strain.pl && renamed(strain.pl, rename);
+  const raman = strain.raman && renamed(strain.raman, rename);
+  if (pl === strain.pl && raman === strain.raman) return strain;
   return {
     ...strain,
-    ...(pl === undefined ? {} : { pl: { ...pl, source: rename(pl.source) } }),
-    ...(raman === undefined ? {} : { raman: { ...raman, source: rename(raman.source) } }),
+    ...(pl === undefined ? {} : { pl }),
+    ...(raman === undefined ? {} : { raman }),
   };
 }
 

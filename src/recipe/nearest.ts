@@ -31,8 +31,8 @@ const longestCompared = 200;
 
 /**
  * The candidate a word was most likely meant as, or null when none is near: capitals and `_`, `-`,
- * spaces count for nothing, a beginning of at least three letters counts as near, otherwise at most
- * one letter in three may differ (one in words of up to four letters).
+ * spaces count for nothing, a beginning of at least three letters counts as one letter and a half,
+ * otherwise at most one letter in three may differ (one in words of up to five letters).
  */
 export function nearestWord(word: unknown, candidates: readonly string[]): string | null {
   if (typeof word !== 'string' || word.length > longestCompared) return null;
@@ -45,8 +45,11 @@ export function nearestWord(word: unknown, candidates: readonly string[]): strin
       given.length >= 3 &&
       known.length >= 3 &&
       (known.startsWith(given) || given.startsWith(known));
-    const distance = isBeginning && known !== given ? 0.9 : editDistance(given, known);
-    const most = Math.max(1, Math.floor(Math.max(given.length, known.length) / 3));
+    const edits = editDistance(given, known);
+    const distance = isBeginning ? Math.min(edits, 1.5) : edits;
+    const most = isBeginning
+      ? 1.5
+      : Math.max(1, Math.floor(Math.max(given.length, known.length) / 3));
     if (distance <= most && distance < bestDistance && given !== '' && known !== '') {
       best = candidate;
       bestDistance = distance;

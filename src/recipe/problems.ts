@@ -37,6 +37,11 @@ export function formatPath(parts: PathParts): string {
   return path;
 }
 
+/** `bands[1]` and `unit` as one path. */
+export function joinPaths(base: string, path: string): string {
+  return base === '' || path === '' || path.startsWith('[') ? base + path : `${base}.${path}`;
+}
+
 /** A value as it is shown in a message: its JSON, cut short. */
 export function showValue(value: unknown): string {
   if (typeof value === 'number') return String(value);

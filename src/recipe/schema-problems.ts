@@ -1,21 +1,28 @@
 /** What the schema objects to, as problems a user can act on: path, value, expectation, nearest word. */
-import type * as z from 'zod';
+import * as z from 'zod';
 import { nearestWord } from './nearest';
-import { type PathParts, type RecipeProblem, statedProblem, wrongValue } from './problems';
+import {
+  formatPath,
+  joinPaths,
+  type PathParts,
+  type RecipeProblem,
+  statedProblem,
+  wrongValue,
+} from './problems';
 import { isRecord, quoted } from './schema-parts';
 import { childSchema, knownFields } from './schema-walk';
 
 type Issue = z.core.$ZodIssue;
 
 /** Every way in which `value` departs from `schema`; empty when it does not. */
-export function schemaProblems(schema: z.ZodType, value: unknown): readonly RecipeProblem[] {
-  const result = schema.safeParse(value, { error: expectedOf });
+export function schemaProblems(schema: z.core.$ZodType, value: unknown): readonly RecipeProblem[] {
+  const result = z.safeParse(schema, value, { error: expectedOf });
   if (result.success) return [];
   return result.error.issues.flatMap((issue) => problemsOf(issue, { schema, value, base: [] }));
 }
 
 interface Place {
-  readonly schema: z.ZodType;
+  readonly schema: z.core.$ZodType;
   readonly value: unknown;
   /** path of the union an issue was found in; its own path goes on from there */
   readonly base: PathParts;
@@ -63,14 +70,19 @@ function unknownField(place: Place, path: PathParts, key: string): RecipeProblem
 }
 
 function fieldsAt(place: Place, path: PathParts): readonly string[] {
+  const schema = schemaAt(place, path);
+  return schema === null ? [] : knownFields(schema, valueAt(place.value, path));
+}
+
+function schemaAt(place: Place, path: PathParts): z.core.$ZodType | null {
   let schema: z.core.$ZodType | null = place.schema;
   let value = place.value;
   for (const part of path) {
-    if (schema === null || typeof part === 'symbol') return [];
+    if (schema === null || typeof part === 'symbol') return null;
     schema = childSchema(schema, value, part);
     value = valueAt(value, [part]);
   }
-  return schema === null ? [] : knownFields(schema, value);
+  return schema;
 }
 
 /**
@@ -84,15 +96,12 @@ function unionProblems(
   place: Place,
 ): readonly RecipeProblem[] {
   if ('discriminator' in issue && typeof issue.discriminator === 'string') {
-    const options = words(('options' in issue && issue.options) || []);
-    return [
-      wrongValue({
-        path,
-        value,
-        expected: quoted(options, 'or'),
-        nearest: nearestWord(value, options),
-      }),
-    ];
+    return wordProblems(
+      issue.discriminator,
+      words(('options' in issue && issue.options) || []),
+      path,
+      place,
+    );
   }
   const forms = issue.errors.filter((issues) => !issues.some((one) => isOfOtherType(one)));
   const [form, ...others] = isRecord(value) ? forms : [];
@@ -107,6 +116,33 @@ function unionProblems(
     .flat()
     .flatMap((one) => (one.code === 'invalid_value' ? words(one.values) : []));
   return [wrongValue({ path, value, expected: issue.message, nearest: nearestWord(value, known) })];
+}
+
+/**
+ * The word that says which form an object has is missing or unknown. The rest of the object is held
+ * against the form most likely meant, or its field names against those of all forms.
+ */
+function wordProblems(
+  field: string,
+  options: readonly string[],
+  path: PathParts,
+  place: Place,
+): readonly RecipeProblem[] {
+  const word = valueAt(place.value, path);
+  const nearest = nearestWord(word, options);
+  const own = wrongValue({ path, value: word, expected: quoted(options, 'or'), nearest });
+  const parent = path.slice(0, -1);
+  const object = valueAt(place.value, parent);
+  const schema = schemaAt(place, parent);
+  if (!isRecord(object) || schema === null) return [own];
+  if (nearest !== null) {
+    const repaired = schemaProblems(schema, { ...object, [field]: nearest });
+    const base = formatPath(parent);
+    return [own, ...repaired.map((one) => ({ ...one, path: joinPaths(base, one.path) }))];
+  }
+  const fields = knownFields(schema, object);
+  const unknown = Object.keys(object).filter((key) => !fields.includes(key));
+  return [own, ...unknown.map((key) => unknownField(place, parent, key))];
 }
 
 function isOfOtherType(issue: Issue): boolean {

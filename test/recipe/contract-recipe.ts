@@ -95,9 +95,9 @@ export const contractRecipe = {
   features: { source: 'scan.height', threshold: 'otsu', min_area_px: 12, split: true },
 };
 
-/** A copy to spoil: plain, writable, loosely typed. */
+/** A copy to spoil. */
 export function contractCopy(): Spoilable {
-  return JSON.parse(JSON.stringify(contractRecipe)) as Spoilable;
+  return structuredClone(contractRecipe);
 }
 
-export type Spoilable = { [field: string]: Spoilable } & Spoilable[] & string & number & boolean;
+export type Spoilable = typeof contractRecipe;

@@ -12,13 +12,14 @@ const common = {
     .enum(['exciton', 'trion', 'localised', 'interlayer', 'raman'])
     .describe('what the component stands for; "raman" also reports its centre as a shift')
     .exactOptional(),
-  optional: z
-    .boolean()
-    .describe(
-      'true: kept at a pixel only where the Bayesian information criterion asks for it; default false',
-    )
-    .exactOptional(),
 };
+
+const optional = z
+  .boolean()
+  .describe(
+    'true: kept at a pixel only where the Bayesian information criterion asks for it; default false',
+  )
+  .exactOptional();
 
 const area = plainSpec('counts under the peak').exactOptional();
 const centre = centreSpec('centre of the peak').exactOptional();
@@ -31,6 +32,7 @@ const gaussian = z.strictObject({
   area,
   centre,
   fwhm,
+  optional,
 });
 
 const lorentzian = z.strictObject({
@@ -39,6 +41,7 @@ const lorentzian = z.strictObject({
   area,
   centre,
   fwhm,
+  optional,
 });
 
 const pseudoVoigt = z.strictObject({
@@ -48,6 +51,7 @@ const pseudoVoigt = z.strictObject({
   centre,
   fwhm,
   eta: mixSpec('share of the Lorentzian, 0 to 1').exactOptional(),
+  optional,
 });
 
 const voigt = withRule(
@@ -61,6 +65,7 @@ const voigt = withRule(
     ).exactOptional(),
     fwhm_g: widthSpec('full width at half maximum of the Gaussian').exactOptional(),
     fwhm_l: widthSpec('full width at half maximum of the Lorentzian').exactOptional(),
+    optional,
   }),
   (component, object) => {
     const { fwhm: whole, fwhm_g, fwhm_l } = component;
@@ -80,6 +85,7 @@ const tailed = z.strictObject({
   centre,
   fwhm: widthSpec('full width at half maximum of the Gaussian').exactOptional(),
   tail: widthSpec('energy over which the exponential falls by e').exactOptional(),
+  optional,
 });
 
 const fano = z.strictObject({
@@ -89,12 +95,14 @@ const fano = z.strictObject({
   centre,
   fwhm,
   q: plainSpec('asymmetry of the line, negative or positive').exactOptional(),
+  optional,
 });
 
 const flat = z.strictObject({
   ...common,
   shape: z.literal('flat').describe('the same counts in every channel'),
   level: plainSpec('counts per channel').exactOptional(),
+  optional,
 });
 
 const line = z.strictObject({
@@ -102,6 +110,7 @@ const line = z.strictObject({
   shape: z.literal('line').describe('straight line'),
   level,
   slope: plainSpec('counts per channel per eV').exactOptional(),
+  optional,
 });
 
 const parabola = z.strictObject({
@@ -110,6 +119,7 @@ const parabola = z.strictObject({
   level,
   slope: plainSpec('slope at the middle of the window, counts per channel per eV').exactOptional(),
   curvature: plainSpec('counts per channel per eV², the factor of the square').exactOptional(),
+  optional,
 });
 
 const decay = z.strictObject({
@@ -119,6 +129,7 @@ const decay = z.strictObject({
   decay: plainSpec(
     'energy over which it falls by e, eV; negative: it falls toward low energy',
   ).exactOptional(),
+  optional,
 });
 
 export const componentSchema = z.discriminatedUnion('shape', [

@@ -47,11 +47,11 @@ function entriesOf(list: readonly unknown[], schema: AnySchema): readonly Member
   }));
 }
 
-/** On one line where it fits and nothing nests deeper than twice, spread out otherwise. */
+/** On one line where it fits, spread out otherwise. */
 function written({ label, value, schema }: Member, indent: string): string {
   const room = lineWidth - indent.length - label.length - 1;
   if (isNumbers(value) && value.length > 0) return label + numbers(value, indent, room);
-  const line = depthOf(value) <= 3 ? onOneLine(value, schema) : null;
+  const line = isSpread(value) ? null : onOneLine(value, schema);
   if (line !== null && line.length <= room) return label + line;
   if (Array.isArray(value)) return label + spread(entriesOf(value, schema), indent, '[', ']');
   if (isRecord(value)) return label + spread(fieldsOf(value, schema), indent, '{', '}');
@@ -77,15 +77,10 @@ function onOneLine(value: unknown, schema: AnySchema): string {
   return `{ ${fields.map((field) => field.label + onOneLine(field.value, field.schema)).join(', ')} }`;
 }
 
-/** Objects and lists one inside another; past four the exact number does not matter. */
-function depthOf(value: unknown): number {
-  if (typeof value !== 'object' || value === null) return 0;
-  let deepest = 0;
-  for (const entry of Object.values(value)) {
-    deepest = Math.max(deepest, depthOf(entry));
-    if (deepest > 3) break;
-  }
-  return deepest + 1;
+/** Lists of objects have a line for each even where one would do: the next one added is then one line more. */
+function isSpread(value: unknown): boolean {
+  if (Array.isArray(value)) return value.some(isRecord);
+  return isRecord(value) && Object.values(value).some(isSpread);
 }
 
 function isNumbers(value: unknown): value is readonly number[] {

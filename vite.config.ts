@@ -46,7 +46,7 @@ export default defineConfig(({ mode }) => {
               : { bench: fromRoot('test/bench/bench.ts') }),
             'node-worker': fromRoot('workers/node-worker.ts'),
           },
-          output: { entryFileNames: '[name].js', chunkFileNames: 'chunks/[name]-[hash].js' },
+          output: { entryFileNames: '[name].js', chunkFileNames: '[name]-[hash].js' },
         },
       },
     };

@@ -52,14 +52,13 @@ export function parseSource(path: string, text: string, known: ReadonlySet<strin
   const { program, errors } = parseSync(path, text);
   if (errors[0] !== undefined) throw new Error(`${path} cannot be parsed: ${errors[0].message}`);
   const nodes = [...walk(program)];
-  const body = (program as { readonly body: readonly SyntaxNode[] }).body;
   return {
     path,
     text,
     lines: text.split('\n').length - 1,
     imports: nodes.flatMap((node) => importOf(node, path, known)),
     hasDefaultExport: nodes.some(isDefaultExport),
-    isBarrel: body.length > 0 && body.every(isPassedOn),
+    isBarrel: program.body.length > 0 && program.body.every(isPassedOn),
     nodes,
   };
 }
@@ -115,7 +114,7 @@ function isDefaultExport(node: SyntaxNode): boolean {
   return node.type === 'ExportSpecifier' && exported?.name === 'default';
 }
 
-function isPassedOn(node: SyntaxNode): boolean {
+function isPassedOn(node: { readonly type: string }): boolean {
   const isExport = node.type === 'ExportNamedDeclaration' || node.type === 'ExportAllDeclaration';
-  return isExport && node.source !== null && node.source !== undefined;
+  return isExport && 'source' in node && node.source !== null;
 }

@@ -66,16 +66,16 @@ export default defineConfig(({ mode }) => {
           test: {
             name: 'unit',
             include: ['test/**/*.test.ts', 'test/**/*.test.tsx'],
-            exclude: ['test/browser/**', 'test/cli/**', 'node_modules/**'],
+            exclude: ['test/browser/**', 'test/cli/program/**', 'node_modules/**'],
           },
         },
         {
           extends: true,
           // These run the built program, so there must be one; it is built where sources are newer.
           test: {
-            name: 'cli',
-            include: ['test/cli/**/*.test.ts'],
-            globalSetup: ['test/cli/ensure-built.ts'],
+            name: 'program',
+            include: ['test/cli/program/**/*.test.ts'],
+            globalSetup: ['test/cli/program/ensure-built.ts'],
           },
         },
       ],

@@ -13,8 +13,8 @@ import { type Offer, offerDemo, offerScan } from './server/offer';
 export const runServe: RunCommand = async (call, { print, signal }) => {
   const port = wholeNumberOption(call, 'port', { least: 0, most: 65_535 });
   const appFolder = fileURLToPath(new URL('../app', import.meta.url));
-  if ((await appFileAt(appFolder, '/')) === null) throw appMissing(appFolder);
   const offer = await offerOf(call, appFolder);
+  if ((await appFileAt(appFolder, '/')) === null) throw appMissing(appFolder);
   const server = createAppServer({ appFolder, offer });
   const listening = await listenOnLoopback(server, port);
   print(`Rimlight is at http://127.0.0.1:${listening}/ (Ctrl-C ends it)`);

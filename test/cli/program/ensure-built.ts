@@ -3,7 +3,7 @@ import { spawnSync } from 'node:child_process';
 import { fileURLToPath } from 'node:url';
 
 export function setup(): void {
-  const script = fileURLToPath(new URL('../../src/cli/bootstrap/build.mjs', import.meta.url));
+  const script = fileURLToPath(new URL('../../../src/cli/bootstrap/build.mjs', import.meta.url));
   const { status } = spawnSync(process.execPath, [script, '--if-stale'], {
     stdio: ['ignore', 2, 2],
   });

@@ -14,7 +14,8 @@ const limitSchema = z.union(
     z.number(),
     z
       .templateLiteral(['p', z.number()], { error: limitExpected })
-      .check(z.regex(percentilePattern, { error: limitExpected })),
+      .check(z.regex(percentilePattern, { error: limitExpected }))
+      .meta({ pattern: percentilePattern.source }),
   ],
   { error: limitExpected },
 );
@@ -62,7 +63,9 @@ export const channelSchema = withRule(
 export const blendBlockSchema = z.strictObject({
   mode: z
     .enum(['additive', 'screen'])
-    .describe('how the colours are mixed: added, or as light through slides'),
+    .describe(
+      'how the colours are mixed: "additive" adds them and cuts off what is too bright; "screen" multiplies what each leaves dark, so that nothing is cut off',
+    ),
   channels: z
     .array(channelSchema)
     .min(1)

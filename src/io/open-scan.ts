@@ -80,14 +80,22 @@ export async function openContainer(
   source: ByteSource,
   options: ReadOptions = {},
 ): Promise<Container> {
-  if (source.size === 0) throw emptyFile(source.name);
+  const reader = await readerOf(source);
+  if (reader !== null) return reader.open(source, options);
+  source.close?.();
+  throw source.size === 0 ? emptyFile(source.name) : notOpenable(source.name);
+}
+
+/** The reader of the file's format; null when there is none. */
+async function readerOf(source: ByteSource): Promise<Reader | null> {
+  if (source.size === 0) return null;
   const head = await source.read(0, Math.min(headBytes, source.size));
   const signed = doors.find(({ hasSignature }) => hasSignature(head));
-  if (signed !== undefined) return (await signed.load()).open(source, options);
+  if (signed !== undefined) return signed.load();
   const text = doors.find(({ format }) => format === 'text');
-  const reader = text === undefined || hasZeroBytes(head) ? null : await text.load();
-  if (reader?.sniff(head, source.name) === true) return reader.open(source, options);
-  throw notOpenable(source.name);
+  if (text === undefined || hasZeroBytes(head)) return null;
+  const reader = await text.load();
+  return reader.sniff(head, source.name) ? reader : null;
 }
 
 function startsWith(head: Uint8Array, bytes: readonly number[], at = 0): boolean {

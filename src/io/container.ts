@@ -11,6 +11,10 @@ export interface ByteSource {
   readonly size: number;
   /** Bytes from ≤ i < to; shorter only at the end of the file. */
   read(from: number, to: number): Promise<Uint8Array>;
+  /** The same without waiting, where the platform can: memory, files in Node, a Blob inside a worker. HDF5 reads so. */
+  readonly readSync?: (from: number, to: number) => Uint8Array;
+  /** Lets go of the file. A container calls it when it is closed, or when it could not be opened. */
+  readonly close?: () => void;
   /** For readers that must see a file system (HDF5): what to mount. */
   readonly origin:
     | { readonly kind: 'blob'; readonly blob: Blob }

@@ -33,4 +33,7 @@ export const bandSchema = withRule(
   },
 );
 
-export const bandBlockSchema = z.array(bandSchema);
+/** Far more than a screen holds; bounds what validation compares. */
+export const mostBands = 500;
+
+export const bandBlockSchema = z.array(bandSchema).max(mostBands);

@@ -41,7 +41,9 @@ export const channelSchema = withRule(
       )
       .exactOptional(),
     gamma: positiveSchema
-      .describe(`exponent of the brightness between the limits, above 1 darker, below 1 lighter; default ${defaults.channel.gamma}`)
+      .describe(
+        `exponent of the brightness between the limits, above 1 darker, below 1 lighter; default ${defaults.channel.gamma}`,
+      )
       .exactOptional(),
   }),
   (channel, object) => {

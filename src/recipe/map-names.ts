@@ -7,8 +7,8 @@ import { type FitParameter, isFitParameter } from './shape-parameters';
 export const strainComponents = ['xx', 'yy', 'xy', 'sum', 'major', 'minor', 'angle'] as const;
 export type StrainComponent = (typeof strainComponents)[number];
 
-export type FitQuality = 'chi2r' | 'status' | 'iterations';
-const fitQualities: readonly string[] = ['chi2r', 'status', 'iterations'] satisfies FitQuality[];
+const fitQualities = ['chi2r', 'status', 'iterations'] as const;
+export type FitQuality = (typeof fitQualities)[number];
 
 /** A map name in its parts; `isError` is the map of 1-σ uncertainties, named with `.err`. */
 export type MapName =
@@ -53,8 +53,9 @@ function pairName(family: string | undefined, second: string): MapName | null {
   if (family === 'scan' && (second === 'total' || second === 'height')) {
     return { kind: 'scan', quantity: second, isError };
   }
-  if (family === 'fit' && fitQualities.includes(second)) {
-    return { kind: 'fit-quality', quantity: second as FitQuality, isError };
+  const quality = fitQualities.find((known) => known === second);
+  if (family === 'fit' && quality !== undefined) {
+    return { kind: 'fit-quality', quantity: quality, isError };
   }
   if (family === 'strain' && (second === 'pl' || second === 'raman')) {
     return { kind: 'strain', method: second, isError };

@@ -145,6 +145,9 @@ export const componentSchema = z.discriminatedUnion('shape', [
   decay,
 ]);
 
+/** Far more than a fit can tell apart; bounds what validation compares. */
+export const mostComponents = 100;
+
 export const modelBlockSchema = withRule(
   z.strictObject({
     window: pairSchema
@@ -162,7 +165,11 @@ export const modelBlockSchema = withRule(
         `where a pixel's fit begins: at the result of a pixel beside it, or at the starts given; default "${defaults.model.seed}"`,
       )
       .exactOptional(),
-    components: z.array(componentSchema).min(1).describe('peaks and what they stand on'),
+    components: z
+      .array(componentSchema)
+      .min(1)
+      .max(mostComponents)
+      .describe('peaks and what they stand on'),
   }),
   (model, object) => {
     if (!Array.isArray(model.window)) return;

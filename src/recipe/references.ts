@@ -3,7 +3,10 @@
  * somewhere, regions that are drawn. Reads a value that may be invalid elsewhere, so that problems of
  * both kinds are told together.
  */
+import { mostBands } from './band-block';
+import { mostChannels } from './blend-block';
 import { parseMapName } from './map-names';
+import { mostComponents } from './model-block';
 import { nearestWord } from './nearest';
 import { offeredMapsLoosely } from './offered-maps';
 import { type PathParts, type RecipeProblem, wrongValue } from './problems';
@@ -22,8 +25,12 @@ interface Known {
   readonly regions: readonly string[];
 }
 
-export function referenceProblems(value: unknown): readonly RecipeProblem[] {
-  if (!isRecord(value)) return [];
+export function referenceProblems(document: unknown): readonly RecipeProblem[] {
+  if (!isRecord(document)) return [];
+  // Past the most there may be, their number is the problem.
+  const value = Array.isArray(document.bands)
+    ? { ...document, bands: document.bands.slice(0, mostBands) }
+    : document;
   const known = knownOf(value);
   const components = componentsOf(value);
   return [
@@ -40,7 +47,7 @@ export function referenceProblems(value: unknown): readonly RecipeProblem[] {
 
 function componentsOf(recipe: LooseRecord): readonly unknown[] {
   const components = isRecord(recipe.model) ? recipe.model.components : undefined;
-  return Array.isArray(components) ? components : [];
+  return Array.isArray(components) ? components.slice(0, mostComponents) : [];
 }
 
 function knownOf(recipe: LooseRecord): Known {
@@ -95,11 +102,13 @@ function repeatedNames(list: unknown, path: PathParts): readonly RecipeProblem[]
 
 function blendProblems({ blend }: LooseRecord, known: Known): readonly RecipeProblem[] {
   if (!isRecord(blend) || !Array.isArray(blend.channels)) return [];
-  return blend.channels.flatMap((channel: unknown, index) =>
-    isRecord(channel)
-      ? sourceProblems(channel.source, ['blend', 'channels', index, 'source'], known)
-      : [],
-  );
+  return blend.channels
+    .slice(0, mostChannels)
+    .flatMap((channel: unknown, index) =>
+      isRecord(channel)
+        ? sourceProblems(channel.source, ['blend', 'channels', index, 'source'], known)
+        : [],
+    );
 }
 
 function strainProblems({ strain }: LooseRecord, known: Known): readonly RecipeProblem[] {

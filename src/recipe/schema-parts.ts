@@ -93,9 +93,12 @@ export function objectToMoreThanOne(
     object([field], `only one of ${quoted(fields, 'and')}; "${first}" is given too`);
 }
 
-/** `"a", "b" or "c"` */
+/** `"a", "b" or "c"`; of a long list the first twenty. */
 export function quoted(words: readonly unknown[], joint: 'or' | 'and'): string {
-  const shown = words.map((word) => (typeof word === 'string' ? `"${word}"` : String(word)));
+  const shown = words
+    .slice(0, 20)
+    .map((word) => (typeof word === 'string' ? `"${word}"` : String(word)));
+  if (words.length > shown.length) shown.push(`${words.length - shown.length} more`);
   const last = shown.pop() ?? '';
   return shown.length === 0 ? last : `${shown.join(', ')} ${joint} ${last}`;
 }

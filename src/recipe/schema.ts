@@ -41,8 +41,6 @@ export const recipeSchema = z.strictObject({
 });
 
 export type Recipe = DeepReadonly<z.infer<typeof recipeSchema>>;
-/** One of the recipe's blocks and settings by name: "bands", "model", … */
-export type RecipeField = keyof Recipe;
 
 export type ScanBlock = NonNullable<Recipe['scan']>;
 export type ConditionStep = NonNullable<Recipe['condition']>[number];

@@ -499,6 +499,31 @@ describe('a document as a whole', () => {
     expect(performance.now() - started).toBeLessThan(2000);
   });
 
+  it('of thousands of wrong entries is told of all of them without a wait', () => {
+    const many = (entry: (n: number) => unknown): unknown[] =>
+      Array.from({ length: 9_999 }, (_, n) => entry(n));
+    const started = performance.now();
+    const told = problemsOf({
+      recipe: 1,
+      bands: many((n) => ({ name: `b${n}`, from: 1, to: 2, unit: 'eV' })),
+      condition: many(() => ({ step: 'dspike', a: 1, b: 2 })),
+      model: {
+        components: many((n) => ({
+          name: `c${n}`,
+          shape: 'line',
+          level: { tie: { to: 'x.level' } },
+        })),
+      },
+      blend: {
+        mode: 'screen',
+        channels: many(() => ({ source: 'band.x.integral', colour: '#000000' })),
+      },
+    });
+    expect(told.length).toBeGreaterThan(29_997);
+    expect(Math.max(...told.map(({ message }) => message.length))).toBeLessThan(500);
+    expect(performance.now() - started).toBeLessThan(5_000);
+  });
+
   it('takes an axis of 200 000 values, and tells the first that is no number', () => {
     const values: unknown[] = Array.from({ length: 200_000 }, (_, k) => 500 + k / 1000);
     expect(problemsOf({ recipe: 1, scan: { axis: { values } } })).toEqual([]);

@@ -7,6 +7,13 @@ import type { CubePlan, Preview, ScanPlan } from './scan-plan';
 
 /** Bytes asked of the file at most (whole rows are read, of which a part is used). */
 const previewBytes = 64 << 20;
+/**
+ * Where channels are the slowest axis, as in a stack of pages, every row lies in every page, and a
+ * packed page has to be unpacked whole for one row of it: up to this size all pages are gone through
+ * once instead, beyond it only a few rows are taken.
+ */
+const stackBytes = 512 << 20;
+const stackRows = 16;
 
 const bytesPerValue: Readonly<Record<ElementType, number>> = {
   uint8: 1,
@@ -44,7 +51,7 @@ export async function previewScan(
 ): Promise<Preview> {
   const { cube, meta } = plan;
   const type = container.entries.find(({ path }) => path === cube.path)?.type ?? 'float64';
-  const { step, blocks } = thinningOf(plan, previewBytes / bytesPerValue[type]);
+  const { step, blocks } = thinningOf(plan, bytesPerValue[type]);
   const ny = Math.ceil(meta.shape.ny / step);
   const nx = Math.ceil(meta.shape.nx / step);
   const sums = newSums(cube, { ny, nx, nk: meta.shape.nk }, step, meta.shape.nx);
@@ -69,27 +76,44 @@ export async function previewScan(
 }
 
 /** Thinner until what must be read fits: whole planes along the slower axis of space, else pixel by pixel. */
-function thinningOf({ cube, meta }: ScanPlan, budget: number): Thinning {
+function thinningOf({ cube, meta }: ScanPlan, bytes: number): Thinning {
   const { ny, nx } = meta.shape;
+  const budget = previewBytes / bytes;
   const whole = regionOf(cube, { y0: 0, y1: ny });
   const channels = cube.fileShape[cube.kAxis];
-  if (ny * nx * channels <= budget) return { step: 1, blocks: blocksOf(whole.start, whole.count) };
+  const values = ny * nx * channels;
+  if (values <= budget) return { step: 1, blocks: blocksOf(whole.start, whole.count) };
+  // Rows of a serpentine scan keep their direction when only even ones are taken.
+  const stepWhere = (fits: (step: number) => boolean): number => {
+    let step = 2;
+    while (!fits(step)) step += cube.serpentine ? 2 : 1;
+    return step;
+  };
+  const pixelStep = stepWhere(
+    (step) => Math.ceil(ny / step) * Math.ceil(nx / step) * channels <= budget,
+  );
+  const isStack = cube.kAxis === 0;
+  if (isStack && values * bytes <= stackBytes) {
+    return { step: pixelStep, blocks: blocksOf(whole.start, whole.count) };
+  }
   const isColumnsSlower = ny === 1 || (cube.xAxis >= 0 && cube.xAxis < cube.yAxis);
   const slowAxis = isColumnsSlower ? cube.xAxis : cube.yAxis;
   const slowLength = isColumnsSlower ? nx : ny;
   const plane = (isColumnsSlower ? ny : nx) * channels;
-  // Rows of a serpentine scan keep their direction when only even ones are taken.
-  const next = (step: number): number => (cube.serpentine ? step + 2 : step + 1);
-  let step = 2;
   if (plane <= budget) {
-    while (Math.ceil(slowLength / step) * plane > budget) step = next(step);
+    const most = isStack ? stackRows : slowLength;
+    const step = stepWhere((one) => {
+      const planes = Math.ceil(slowLength / one);
+      return planes * plane <= budget && planes <= most;
+    });
     return { step, blocks: everyStep(whole, slowAxis, step) };
   }
-  while (Math.ceil(ny / step) * Math.ceil(nx / step) * channels > budget) step = next(step);
-  const planes = everyStep(whole, slowAxis, step);
+  const planes = everyStep(whole, slowAxis, pixelStep);
   const fastAxis = isColumnsSlower ? cube.yAxis : cube.xAxis;
-  const blocks = fastAxis < 0 ? planes : planes.flatMap((one) => everyStep(one, fastAxis, step));
-  return { step, blocks };
+  return {
+    step: pixelStep,
+    blocks: fastAxis < 0 ? planes : planes.flatMap((one) => everyStep(one, fastAxis, pixelStep)),
+  };
 }
 
 function everyStep(block: Block, axis: number, step: number): Block[] {

@@ -144,6 +144,28 @@ describe('previewScan', () => {
     },
   );
 
+  it('goes once through a stack of pages rather than many times through each', async () => {
+    const shape = { ny: 256, nx: 256, nk: 1024 };
+    const plan = makePlan({ shape, order: 'kyx' });
+    const whole = fakeContainer({
+      arrays: { '/counts': { shape: plan.cube.fileShape, data: [], type: 'uint16' } },
+    });
+    const pages = new Set<number>();
+    const container = {
+      ...whole,
+      read: (_path: string, start: readonly number[], count: readonly number[]) => {
+        for (let k = start[0]; k < start[0] + count[0]; k++) {
+          expect(pages.has(k)).toBe(false);
+          pages.add(k);
+        }
+        return Promise.resolve(new Uint16Array(count[0] * count[1] * count[2]).fill(1));
+      },
+    };
+    const preview = await previewScan(container, plan);
+    expect(pages.size).toBe(1024);
+    expect([preview.step, preview.totals.length, preview.totals[77]]).toEqual([2, 128 * 128, 1024]);
+  });
+
   it('refuses a scan without a single value', async () => {
     const plan = makePlan({ shape: { ny: 1, nx: 1, nk: 2 }, order: 'k' });
     const data = Float64Array.of(Number.NaN, Number.NaN);

@@ -1,0 +1,65 @@
+/** A demo scan as the files the command line writes: the scan, what its format cannot hold, and the truth. */
+import { RimlightError } from '../errors';
+import type { SampleScan } from '../science/scenarios/scenario';
+import type { ReadOptions } from './container';
+import { sampleTree } from './sample-hdf5';
+import { sampleTruthJson } from './sample-truth';
+import { writeHdf5 } from './write/hdf5';
+
+export interface NamedBytes {
+  /** file name without folder */
+  readonly name: string;
+  readonly bytes: Uint8Array;
+}
+
+type Encode = (
+  scan: SampleScan,
+  stem: string,
+  options: ReadOptions,
+) => Promise<readonly NamedBytes[]>;
+
+/** By ending; each gives the scan file first, named after the stem and the ending. */
+const encoders: Readonly<Record<string, Encode>> = {
+  '.h5': async (scan, stem, options) => [
+    { name: `${stem}.h5`, bytes: await writeHdf5(sampleTree(scan), options) },
+  ],
+};
+
+/** Endings a demo scan can be written with. */
+export const sampleExtensions: readonly string[] = Object.keys(encoders);
+
+/**
+ * The files of a demo scan: the scan itself, companions with what the format cannot hold, and last STEM.truth.json.
+ *
+ * @param fileName - of the scan, without folder; its ending chooses the format
+ * @throws RimlightError 'usage' - for another ending; 'cancelled' - when stopped
+ */
+export async function encodeSample(
+  scan: SampleScan,
+  fileName: string,
+  options: ReadOptions = {},
+): Promise<readonly NamedBytes[]> {
+  const { extension, stem } = sampleFormat(fileName);
+  const files = await encoders[extension](scan, stem, options);
+  const truth = new TextEncoder().encode(sampleTruthJson(scan));
+  return [...files, { name: `${stem}.truth.json`, bytes: truth }];
+}
+
+/**
+ * Ending and stem of a demo scan's file name, to be checked before the scan is made.
+ *
+ * @throws RimlightError 'usage' - when the ending is no format a demo scan can be written in
+ */
+export function sampleFormat(fileName: string): {
+  readonly extension: string;
+  readonly stem: string;
+} {
+  const extension = sampleExtensions.find((ending) => fileName.toLowerCase().endsWith(ending));
+  const stem = extension === undefined ? '' : fileName.slice(0, -extension.length);
+  if (extension !== undefined && stem !== '') return { extension, stem };
+  throw new RimlightError('usage', {
+    what: `a demo scan cannot be written as "${fileName}"`,
+    where: '',
+    hint: `Give a name that ends in ${sampleExtensions.join(' or ')}.`,
+  });
+}

@@ -14,14 +14,14 @@ export interface NamedBytes {
 
 type Encode = (
   scan: SampleScan,
-  stem: string,
+  name: { readonly fileName: string; readonly stem: string },
   options: ReadOptions,
 ) => Promise<readonly NamedBytes[]>;
 
-/** By ending; each gives the scan file first, named after the stem and the ending. */
+/** By ending; each gives the scan file first. */
 const encoders: Readonly<Record<string, Encode>> = {
-  '.h5': async (scan, stem, options) => [
-    { name: `${stem}.h5`, bytes: await writeHdf5(sampleTree(scan), options) },
+  '.h5': async (scan, { fileName }, options) => [
+    { name: fileName, bytes: await writeHdf5(sampleTree(scan), options) },
   ],
 };
 
@@ -40,7 +40,7 @@ export async function encodeSample(
   options: ReadOptions = {},
 ): Promise<readonly NamedBytes[]> {
   const { extension, stem } = sampleFormat(fileName);
-  const files = await encoders[extension](scan, stem, options);
+  const files = await encoders[extension](scan, { fileName, stem }, options);
   const truth = new TextEncoder().encode(sampleTruthJson(scan));
   return [...files, { name: `${stem}.truth.json`, bytes: truth }];
 }

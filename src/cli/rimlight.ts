@@ -3,6 +3,7 @@
 import { main } from './main';
 
 const stopper = new AbortController();
+let isListening = false;
 let hasProgressLine = false;
 
 for (const stream of [process.stdout, process.stderr]) {
@@ -13,12 +14,18 @@ for (const stream of [process.stdout, process.stderr]) {
   });
 }
 
-for (const name of ['SIGINT', 'SIGTERM'] as const) {
-  process.on(name, () => {
-    // Asked twice, it does not wait for anything to be put away.
-    if (stopper.signal.aborted) process.exit(130);
-    stopper.abort();
-  });
+/** A command that does not look at the signal is ended by the system at once, as any program is. */
+function listenToStop(): AbortSignal {
+  if (isListening) return stopper.signal;
+  isListening = true;
+  for (const name of ['SIGINT', 'SIGTERM'] as const) {
+    process.on(name, () => {
+      // Asked twice, it does not wait for anything to be put away.
+      if (stopper.signal.aborted) process.exit(130);
+      stopper.abort();
+    });
+  }
+  return stopper.signal;
 }
 
 process.exitCode = await main(process.argv.slice(2), {
@@ -28,7 +35,9 @@ process.exitCode = await main(process.argv.slice(2), {
     process.stderr.write(`${text}\n`);
   },
   progressLine: process.stderr.isTTY ? writeProgressLine : null,
-  signal: stopper.signal,
+  get signal() {
+    return listenToStop();
+  },
 });
 clearProgressLine();
 

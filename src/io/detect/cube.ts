@@ -110,7 +110,7 @@ function isAxis(entry: ArrayEntry, vectors: readonly RoledVector[]): boolean {
 const likely =
   /\b(counts?|cts|intensit(y|ies)|signal|spectra|spectrum|data|cube|image|map|scan|pl|raman|luminescence|absorbance)\b/;
 const unlikely =
-  /\b(err(or)?s?|errors|sigma|std|stdev|var(iance)?|unc(ertainty)?|mask|weights?|fit(ted)?|model|residuals?|baseline|quality|flags?)\b/;
+  /\b(err(or)?s?|errors|sigma|std|stdev|var(iance)?|unc(ertainty)?|mask|weights?|fit(ted)?|model|residuals?|baseline|quality|flags?|responses?|efficiency|qe)\b/;
 const background = /\b(dark|background|bg|bkg|reference|blank|flat ?field)\b/;
 const derived = /\b(minus|corrected|subtracted|normali[sz]ed|smoothed|processed)\b/;
 const surface = /\b(height|topography|topo|afm|z)\b/;

@@ -1,6 +1,7 @@
 /** On which scale the axis values are: kind, unit and medium, stated or read. */
 import { RimlightError } from '../../errors';
 import { type AxisKind, type AxisUnit, axisUnits } from '../../science/axis';
+import { formatUnit } from '../../science/format';
 import type { AxisChoice } from '../scan-choices';
 import type { Alternative, Guess } from '../scan-plan';
 import type { Agreement } from './agreement';
@@ -79,7 +80,7 @@ export function findScale(question: ScaleQuestion): ScaleAnswer {
       },
       unitGuess: {
         field: 'unit',
-        label: unit === 'cm-1' ? 'cm⁻¹' : unit,
+        label: formatUnit(unit),
         source:
           unitStated !== null
             ? 'stated'
@@ -92,7 +93,7 @@ export function findScale(question: ScaleQuestion): ScaleAnswer {
         alternatives: units
           .filter((other) => other !== unit)
           .map((other) => ({
-            label: other === 'cm-1' ? 'cm⁻¹' : other,
+            label: formatUnit(other),
             evidence: 'another unit of this kind',
             choice: { axis: { unit: other } },
           })),
@@ -215,7 +216,7 @@ function unknownScale({ axis }: ScaleQuestion, unit: AxisUnit | null): ScaleAnsw
             unit === null || choice.unit === unit || (unit === 'cm-1' && choice.kind === 'energy'),
         )
         .map((choice) => ({
-          label: `${kindWords[choice.kind]}, ${choice.unit === 'cm-1' || unit === 'cm-1' ? 'cm⁻¹' : choice.unit}`,
+          label: `${kindWords[choice.kind]}, ${formatUnit(unit ?? choice.unit)}`,
           evidence: choice.evidence,
           choice: { axis: { kind: choice.kind, unit: unit ?? choice.unit } },
         })),

@@ -29,10 +29,19 @@ function recipeSchemaFile(): Plugin {
   };
 }
 
+/**
+ * The HDF5 library's WebAssembly alone, so that a damaged file that breaks one instance can be followed by a
+ * fresh one; the package exports only a single instance made for good. The same build serves Node.
+ */
+const resolve = {
+  alias: { 'h5wasm/factory': fromRoot('node_modules/h5wasm/dist/esm/hdf5_util.js') },
+};
+
 /** `--mode cli` builds the command line and its worker for Node, `--mode bench` the measurements; otherwise the app. */
 export default defineConfig(({ mode }) => {
   if (mode === 'cli' || mode === 'bench') {
     return {
+      resolve,
       publicDir: false,
       build: {
         ssr: true,
@@ -52,6 +61,7 @@ export default defineConfig(({ mode }) => {
     };
   }
   return {
+    resolve,
     plugins: [react(), recipeSchemaFile()],
     base: './',
     worker: { format: 'es' as const },

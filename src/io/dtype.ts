@@ -67,8 +67,8 @@ export function decodeElements(
   return new arrayOfType[type](buffer, byteOffset, count);
 }
 
-/** Turns the byte order of each element, in place. */
-function swapBytes(bytes: Uint8Array, size: number): void {
+/** Turns the byte order of each element of `size` bytes, in place. */
+export function swapBytes(bytes: Uint8Array, size: number): void {
   for (let at = 0; at + size <= bytes.length; at += size) {
     for (let low = at, high = at + size - 1; low < high; low++, high--) {
       const byte = bytes[low];

@@ -5,7 +5,7 @@ import type { ArrayEntry, ByteSource, Container, Reader, ReadOptions } from './c
 import { bytesOfType, decodeElements } from './dtype';
 import { Hdf5File } from './hdf5/file';
 import { assertFilters } from './hdf5/filters';
-import { walkHdf5 } from './hdf5/walk';
+import { type Hdf5Contents, walkHdf5 } from './hdf5/walk';
 import { blocksOf } from './load-slab';
 import { asScanError, scanError } from './scan-error';
 import { checkBlock } from './shape';
@@ -34,7 +34,8 @@ export const hdf5Reader: Reader = {
 };
 
 async function openHdf5(source: ByteSource): Promise<Container> {
-  const file = await Hdf5File.open(source);
+  const { file, contents } = await openAndWalk(source);
+  const { entries, groups, facts, notes } = contents;
   let isOpen = true;
   const close = (): void => {
     if (!isOpen) return;
@@ -42,27 +43,49 @@ async function openHdf5(source: ByteSource): Promise<Container> {
     file.close();
     source.close?.();
   };
-  try {
-    const { entries, groups, facts, notes } = walkHdf5(file, source.size);
-    if (entries.length === 0) throw noArrays(source.name, notes);
-    return {
-      format: 'HDF5',
-      entries,
-      groups,
-      facts,
-      notes,
-      read(path, start, count, options) {
-        const entry = entries.find((one) => one.path === path);
-        if (entry === undefined) {
-          return Promise.reject(scanError(`there is no array ${path}`, source.name));
-        }
-        return readEntry(file, entry, start, count, options);
-      },
-      close,
-    };
-  } catch (error) {
+  if (entries.length === 0) {
     close();
+    throw noArrays(source.name, notes);
+  }
+  return {
+    format: 'HDF5',
+    entries,
+    groups,
+    facts,
+    notes,
+    read(path, start, count, options) {
+      const entry = entries.find((one) => one.path === path);
+      if (entry === undefined) {
+        return Promise.reject(scanError(`there is no array ${path}`, source.name));
+      }
+      return readEntry(file, entry, start, count, options);
+    },
+    close,
+  };
+}
+
+async function openAndWalk(
+  source: ByteSource,
+): Promise<{ readonly file: Hdf5File; readonly contents: Hdf5Contents }> {
+  const file = await Hdf5File.open(source);
+  try {
+    const contents = await twiceIfBroken(file, () => walkHdf5(file, source.size));
+    return { file, contents };
+  } catch (error) {
+    file.close();
     throw error;
+  }
+}
+
+/** When the library breaks down, an earlier damaged file may be to blame: once more in a fresh instance. */
+async function twiceIfBroken<T>(file: Hdf5File, run: () => T): Promise<T> {
+  await file.revive();
+  try {
+    return run();
+  } catch (error) {
+    if (!file.isBroken || file.isAlone) throw error;
+    await file.revive();
+    return run();
   }
 }
 
@@ -80,7 +103,7 @@ async function readEntry(
   const size = bytesOfType[entry.type];
   const total = checkBlock(entry, start, count, where) * size;
   try {
-    assertFilters(file, entry.path);
+    await twiceIfBroken(file, () => assertFilters(file, entry.path));
     const out = new Uint8Array(total);
     let done = 0;
     const pieces = total === 0 ? [] : blocksOf(start, count, pieceBytes / size);
@@ -88,7 +111,10 @@ async function readEntry(
       if (signal !== undefined) await pause();
       throwIfAborted(signal, `reading ${file.name}`);
       const bytes = piece.count.reduce((product, length) => product * length, size);
-      out.set(file.readBlock(entry.path, piece.start, piece.count, bytes), done);
+      const block = await twiceIfBroken(file, () =>
+        file.readBlock(entry.path, piece.start, piece.count, bytes),
+      );
+      out.set(block, done);
       done += bytes;
       onProgress?.(done / total);
     }

@@ -1,87 +1,100 @@
 /** One open HDF5 file: the library's calls, each with its outcome checked. */
 import { isRimlightError, type RimlightError } from '../../errors';
 import type { AttributeValue, ByteSource } from '../container';
-import { asScanError, scanError } from '../scan-error';
-import { type Hdf5Library, loadHdf5, type MountedFile } from './library';
+import { asScanError, scanError, tooBigHint } from '../scan-error';
+import { type H5Module, type Hdf5Library, loadHdf5, type MountedFile } from './library';
 import { isSmallValue, type Metadata, readValue } from './values';
 
 export type ObjectKind = 'group' | 'dataset' | 'broken' | 'external' | 'other';
 
+/** An instance of the library that has this file open. */
+interface Session {
+  readonly library: Hdf5Library;
+  readonly mounted: MountedFile;
+  readonly id: bigint;
+}
+
 export class Hdf5File {
   private constructor(
-    readonly name: string,
-    private readonly library: Hdf5Library,
-    private readonly mounted: MountedFile,
-    private readonly id: bigint,
+    private readonly source: ByteSource,
+    private session: Session,
   ) {}
 
   /** @throws RimlightError 'scan' - when it is no HDF5 file or is damaged */
   static async open(source: ByteSource): Promise<Hdf5File> {
-    const library = await loadHdf5();
-    const mounted = await library.mount(source);
-    const { module } = library;
-    const refuse = (cause?: unknown): RimlightError => {
-      mounted.unmount();
-      return refusal('the HDF5 file could not be opened', source.name, library, mounted, cause);
-    };
-    let id: bigint;
-    try {
-      id = module.open(mounted.path, module.H5F_ACC_RDONLY, false, -1, -1);
-    } catch (error) {
-      throw refuse(error);
-    }
-    if (id < 0n) throw refuse();
-    return new Hdf5File(source.name, library, mounted, id);
+    return new Hdf5File(source, await openSession(source));
+  }
+
+  get name(): string {
+    return this.source.name;
+  }
+
+  /** A damaged file has broken the library's instance that holds this one; not necessarily this one did. */
+  get isBroken(): boolean {
+    return this.session.library.isBroken;
+  }
+
+  /** Another file may have broken the instance. */
+  get isAlone(): boolean {
+    return this.session.library.filesSeen === 1;
+  }
+
+  /** Opens the file again in a fresh instance where the old one is broken. */
+  async revive(): Promise<void> {
+    if (this.isBroken) this.session = await openSession(this.source);
   }
 
   close(): void {
+    const { library, mounted, id } = this.session;
     try {
-      this.library.module.close_file(this.id);
-    } finally {
-      this.mounted.unmount();
+      if (!library.isBroken) library.module.close_file(id);
+      mounted.unmount();
+    } catch (error) {
+      library.noteThrow(error);
     }
+    library.noteClose();
   }
 
   kindOf(path: string): ObjectKind {
-    const { module } = this.library;
-    const type = this.call(path, () => module.get_type(this.id, path));
-    if (type === module.H5G_GROUP) return 'group';
-    if (type === module.H5G_DATASET) return 'dataset';
-    if (type === module.H5G_LINK || type === -1) return 'broken';
-    return type === module.H5G_UDLINK ? 'external' : 'other';
+    return this.call(path, (module, id) => {
+      const type = module.get_type(id, path);
+      if (type === module.H5G_GROUP) return 'group';
+      if (type === module.H5G_DATASET) return 'dataset';
+      if (type === module.H5G_LINK || type === -1) return 'broken';
+      return type === module.H5G_UDLINK ? 'external' : 'other';
+    });
   }
 
   namesIn(path: string): readonly string[] {
-    return this.call(path, () => this.library.module.get_names(this.id, path, false));
+    return this.call(path, (module, id) => module.get_names(id, path, false));
   }
 
   /** The same for every path that leads to the same object: its place in the file. */
   identityOf(path: string): string {
-    const { module } = this.library;
-    const reference = this.call(path, () => module.create_object_reference(this.id, path));
+    const reference = this.call(path, (module, id) => module.create_object_reference(id, path));
     const place = Array.from(reference).join('.');
     return /[1-9]/.test(place) ? place : path;
   }
 
   metadataOf(path: string): Metadata {
-    return this.call(path, () => this.library.module.get_dataset_metadata(this.id, path));
+    return this.call(path, (module, id) => module.get_dataset_metadata(id, path));
   }
 
   filtersOf(path: string): readonly { readonly id: number; readonly name: string }[] {
-    return this.call(path, () => this.library.module.get_dataset_filters(this.id, path));
+    return this.call(path, (module, id) => module.get_dataset_filters(id, path));
   }
 
+  /** The short ones: texts, numbers and lists of them. */
   attributesOf(path: string): Readonly<Record<string, AttributeValue>> {
-    const { module } = this.library;
-    const names = this.call(path, () => module.get_attribute_names(this.id, path));
+    const names = this.call(path, (module, id) => module.get_attribute_names(id, path));
     const attributes: Record<string, AttributeValue> = {};
     for (const name of names) {
-      const value = this.call(path, () => {
-        const metadata = module.get_attribute_metadata(this.id, path, name);
+      const value = this.call(path, (module, id) => {
+        const metadata = module.get_attribute_metadata(id, path, name);
         if (!isSmallValue(metadata)) return null;
         return readValue(module, metadata, {
-          read: (pointer) => module.get_attribute_data(this.id, path, name, pointer),
-          reclaim: (pointer) => module.reclaim_vlen_memory(this.id, path, name, pointer),
+          read: (pointer) => module.get_attribute_data(id, path, name, pointer),
+          reclaim: (pointer) => module.reclaim_vlen_memory(id, path, name, pointer),
         });
       });
       if (value !== null) attributes[name] = value;
@@ -92,11 +105,10 @@ export class Hdf5File {
   /** A dataset that is one short value or a few; null where it is something else. */
   smallValueOf(path: string, metadata: Metadata): AttributeValue | null {
     if (!isSmallValue(metadata)) return null;
-    const { module } = this.library;
-    return this.call(path, () =>
+    return this.call(path, (module, id) =>
       readValue(module, metadata, {
-        read: (pointer) => module.get_dataset_data(this.id, path, null, null, null, pointer),
-        reclaim: (pointer) => module.reclaim_vlen_memory(this.id, path, '', pointer),
+        read: (pointer) => module.get_dataset_data(id, path, null, null, null, pointer),
+        reclaim: (pointer) => module.reclaim_vlen_memory(id, path, '', pointer),
       }),
     );
   }
@@ -112,22 +124,18 @@ export class Hdf5File {
     count: readonly number[],
     bytes: number,
   ): Uint8Array {
-    const { module } = this.library;
-    const where = `${this.name}: ${path}`;
-    return this.call(path, () => {
+    return this.call(path, (module, id) => {
       const pointer = module._malloc(Math.max(8, bytes));
       if (pointer === 0) {
-        throw scanError(`there is no memory left for ${bytes} bytes`, where, 'Close other scans.');
+        const where = `${this.name}: ${path}`;
+        throw scanError(`there is no memory left for ${bytes} bytes`, where, tooBigHint);
       }
       try {
-        const status = module.get_dataset_data(
-          this.id,
-          path,
-          count.map(BigInt),
-          start.map(BigInt),
-          start.map(() => 1n),
-          BigInt(pointer),
-        );
+        const counts = count.map(BigInt);
+        const starts = start.map(BigInt);
+        const strides = start.map(() => 1n);
+        const to = BigInt(pointer);
+        const status = module.get_dataset_data(id, path, counts, starts, strides, to);
         if (status < 0) throw this.refusalAt(path);
         return module.HEAPU8.slice(pointer, pointer + bytes);
       } finally {
@@ -137,33 +145,64 @@ export class Hdf5File {
   }
 
   private refusalAt(path: string, cause?: unknown): RimlightError {
-    const where = `${this.name}: ${path}`;
-    return refusal('the data could not be read', where, this.library, this.mounted, cause);
+    return refusal('the data could not be read', `${this.name}: ${path}`, this.session, cause);
   }
 
   /** Whatever the library throws becomes an error about the file. */
-  private call<T>(path: string, run: () => T): T {
+  private call<T>(path: string, run: (module: H5Module, id: bigint) => T): T {
+    const { library, id } = this.session;
     try {
-      return run();
+      return run(library.module, id);
     } catch (error) {
-      throw isRimlightError(error) ? error : this.refusalAt(path, error);
+      if (isRimlightError(error)) throw error;
+      library.noteThrow(error);
+      throw this.refusalAt(path, error);
     } finally {
-      this.library.takeComplaints();
+      library.takeComplaints();
     }
   }
+}
+
+async function openSession(source: ByteSource): Promise<Session> {
+  const library = await loadHdf5();
+  try {
+    return await openIn(library, source);
+  } catch (error) {
+    if (!library.isBroken || library.filesSeen === 1) throw error;
+    // An earlier damaged file may be to blame: once more in a fresh instance.
+    return openIn(await loadHdf5(), source);
+  }
+}
+
+async function openIn(library: Hdf5Library, source: ByteSource): Promise<Session> {
+  const mounted = await library.mount(source);
+  const { module } = library;
+  let cause: unknown;
+  try {
+    const id = module.open(mounted.path, module.H5F_ACC_RDONLY, false, -1, -1);
+    if (id >= 0n) return { library, mounted, id };
+  } catch (error) {
+    library.noteThrow(error);
+    cause = error;
+  }
+  mounted.unmount();
+  library.noteClose();
+  const what = 'the HDF5 file could not be opened';
+  throw refusal(what, source.name, { library, mounted }, cause);
 }
 
 function refusal(
   what: string,
   where: string,
-  library: Hdf5Library,
-  mounted: MountedFile,
-  cause: unknown,
+  { library, mounted }: Pick<Session, 'library' | 'mounted'>,
+  cause?: unknown,
 ): RimlightError {
   const complaints = library.takeComplaints();
   const failure = mounted.takeFailure();
   if (failure !== null) return asScanError(failure, 'the file could not be read', where);
-  const reason = reasonOf(complaints) ?? (cause instanceof Error ? cause.message : null);
+  const reason = library.isBroken
+    ? 'it is damaged in a way that stopped the HDF5 library'
+    : (reasonOf(complaints) ?? (cause instanceof Error ? cause.message : null));
   return scanError(reason === null ? what : `${what}: ${reason}`, where, undefined, cause);
 }
 

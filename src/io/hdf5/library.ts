@@ -6,10 +6,9 @@
 import { RimlightError } from '../../errors';
 import type { ByteSource } from '../container';
 import { CachedReader } from './cached-reader';
+import { StructureGuard } from './guard';
 
-type H5Module = Awaited<typeof import('h5wasm')['ready']>;
-
-export type { H5Module };
+export type H5Module = Awaited<ReturnType<typeof import('h5wasm/factory')['default']>>;
 
 export interface MountedFile {
   /** where the library finds it */
@@ -19,19 +18,46 @@ export interface MountedFile {
   unmount(): void;
 }
 
+/** One instance of the library. */
 export interface Hdf5Library {
   readonly module: H5Module;
+  /** files it has been given so far */
+  readonly filesSeen: number;
+  /** A damaged file has led it outside its memory: nothing it says can be believed any more. */
+  readonly isBroken: boolean;
   mount(source: ByteSource): Promise<MountedFile>;
   /** What the library complained of since the last call, innermost reason last. */
   takeComplaints(): readonly string[];
+  /** Tells that a file is done with: an instance whose memory has grown large is not used again. */
+  noteClose(): void;
+  /** Tells that a call threw: each such throw costs some of the instance's stack. */
+  noteThrow(error: unknown): void;
 }
 
-let loading: Promise<Hdf5Library> | null = null;
+/** Far fewer than would use up the stack of 2 MB. */
+const mostThrows = 500;
 
-/** @throws RimlightError 'fault' - when the library cannot be fetched or started */
-export function loadHdf5(): Promise<Hdf5Library> {
-  loading ??= startLibrary().catch((error: unknown) => {
-    loading = null;
+/** Its memory never shrinks. */
+const mostHeapBytes = 256 << 20;
+
+let current: Promise<Hdf5Library> | null = null;
+/** Compiled code is the same for every instance, but its loader is fetched once only. */
+let factory: Promise<typeof import('h5wasm/factory')> | null = null;
+
+/**
+ * An instance that can be trusted: the one used before, or a fresh one where that is broken or worn.
+ *
+ * @throws RimlightError 'fault' - when the library cannot be fetched or started
+ */
+export async function loadHdf5(): Promise<Hdf5Library> {
+  current ??= startLibrary(() => {
+    current = null;
+  });
+  try {
+    return await current;
+  } catch (error) {
+    current = null;
+    factory = null;
     throw new RimlightError(
       'fault',
       {
@@ -41,26 +67,44 @@ export function loadHdf5(): Promise<Hdf5Library> {
       },
       { cause: error },
     );
-  });
-  return loading;
+  }
 }
 
 /** A whole file held in memory where it cannot be read in part without waiting (a Blob outside a worker). */
 const mostBytesInMemory = 2 ** 30;
 
-async function startLibrary(): Promise<Hdf5Library> {
-  const { ready } = await import('h5wasm');
-  const module = await ready;
+/** @param retire - called when no further file may be given to this instance */
+async function startLibrary(retire: () => void): Promise<Hdf5Library> {
+  factory ??= import('h5wasm/factory');
+  const { default: makeModule } = await factory;
+  const module = await makeModule({ noInitialRun: true });
   const complaints = captureStandardError(module);
-  let mounted = 0;
+  const state = { filesSeen: 0, isBroken: false, throws: 0 };
   return {
     module,
+    get filesSeen() {
+      return state.filesSeen;
+    },
+    get isBroken() {
+      return state.isBroken;
+    },
     async mount(source) {
       const reader = new CachedReader(await syncReaderOf(source), source.size);
-      mounted++;
-      return mountReader(module, `/scan-${mounted}.h5`, reader);
+      state.filesSeen++;
+      return mountReader(module, `/scan-${state.filesSeen}.h5`, reader, source.name);
     },
     takeComplaints: () => complaints.splice(0),
+    noteClose() {
+      if (module.HEAPU8.length > mostHeapBytes) retire();
+    },
+    noteThrow(error) {
+      state.throws++;
+      // A trap inside the library, or its stack run out.
+      if (error instanceof WebAssembly.RuntimeError || error instanceof RangeError) {
+        state.isBroken = true;
+      }
+      if (state.isBroken || state.throws > mostThrows) retire();
+    },
   };
 }
 
@@ -83,7 +127,13 @@ async function syncReaderOf(source: ByteSource): Promise<ReadSync> {
 const inputOutputError = 29;
 
 /** An empty file of the library's own file system whose size and bytes are the source's. */
-function mountReader(module: H5Module, path: string, reader: CachedReader): MountedFile {
+function mountReader(
+  module: H5Module,
+  path: string,
+  reader: CachedReader,
+  name: string,
+): MountedFile {
+  const guard = new StructureGuard(reader, name);
   let failure: unknown = null;
   const { FS } = module;
   FS.writeFile(path, new Uint8Array(0));
@@ -96,10 +146,10 @@ function mountReader(module: H5Module, path: string, reader: CachedReader): Moun
     position: number,
   ): number => {
     try {
-      return reader.readInto(
-        new Uint8Array(heap.buffer, heap.byteOffset + offset, length),
-        position,
-      );
+      const out = new Uint8Array(heap.buffer, heap.byteOffset + offset, length);
+      const done = reader.readInto(out, position);
+      guard.check(out.subarray(0, done), position);
+      return done;
     } catch (error) {
       failure = error;
       throw Object.assign(new Error('the source failed'), {

@@ -17,6 +17,8 @@ const mostObjects = 20_000;
 const mostDepth = 64;
 const mostFacts = 500;
 const mostFactLength = 1000;
+/** A packed chunk is unpacked as a whole, in the library's memory of 2 GiB. */
+const mostChunkBytes = 2 ** 30;
 /** Deflate gives at most 1032 bytes for one. */
 const mostRatio = 1032;
 
@@ -102,6 +104,12 @@ class Walk {
       return;
     }
     const bytes = valuesOf(shape, path) * bytesOfType[type];
+    const chunkBytes =
+      metadata.chunks === null ? 0 : valuesOf(metadata.chunks, path) * bytesOfType[type];
+    if (chunkBytes > mostChunkBytes) {
+      this.notes.push(`${path} was left out: its chunks of ${chunkBytes} bytes are too large.`);
+      return;
+    }
     if (bytes > (this.size + 4096) * mostRatio) {
       this.notes.push(
         `${path} was left out: it claims ${shapeText(shape)} values, which a file of ${this.size} bytes cannot hold.`,
@@ -129,7 +137,7 @@ class Walk {
 
   /** What is wrong with one object is passed over; the rest may be sound. */
   private passOver(error: unknown, path: string): void {
-    if (!isRimlightError(error) || error.kind !== 'scan') throw error;
+    if (!isRimlightError(error) || error.kind !== 'scan' || this.file.isBroken) throw error;
     this.left.damaged.push(path);
   }
 

@@ -23,12 +23,16 @@ export interface ArrayLayout {
 /** Exactly the bytes asked for; throws when there are fewer. */
 export type ReadRange = (from: number, to: number) => Promise<Uint8Array>;
 
-/** Read at once: small enough to be stopped soon, large enough for a disk. */
-const windowBytes = 4 << 20;
-/** Skipping less than this costs more than reading it. */
-const gapBytes = 64 << 10;
-/** Rows of a Fortran array lie all over the file, so that many are read together and kept. */
-const bandBytes = 128 << 20;
+export interface ReadSizes {
+  /** Read at once: small enough to be stopped soon, large enough for a disk. */
+  readonly windowBytes: number;
+  /** Skipping less than this costs more than reading it. */
+  readonly gapBytes: number;
+  /** Rows of a Fortran array lie all over the file, so that many are read together and kept. */
+  readonly bandBytes: number;
+}
+
+const usualSizes: ReadSizes = { windowBytes: 4 << 20, gapBytes: 64 << 10, bandBytes: 128 << 20 };
 
 interface Band {
   readonly first: number;
@@ -43,6 +47,7 @@ export class StoredArray {
     private readonly layout: ArrayLayout,
     private readonly readRange: ReadRange,
     private readonly where: string,
+    private readonly sizes = usualSizes,
   ) {}
 
   /** @throws RimlightError 'scan' - when the file ends before, or there is not enough memory */
@@ -78,7 +83,7 @@ export class StoredArray {
     let { band } = this;
     if (band === null || first < band.first || first + rows > band.first + band.rows) {
       this.band = null;
-      const wanted = Math.max(rows, Math.floor(bandBytes / Math.max(1, rowBytes)));
+      const wanted = Math.max(rows, Math.floor(this.sizes.bandBytes / Math.max(1, rowBytes)));
       const bandRows = Math.min(wanted, shape[0] - first);
       const values = await this.readBlock(
         shape.map((_, axis) => (axis === 0 ? first : 0)),
@@ -111,6 +116,7 @@ export class StoredArray {
     { signal, onProgress }: ReadOptions,
   ): Promise<Uint8Array> {
     const { layout } = this;
+    const { gapBytes, windowBytes } = this.sizes;
     const size = bytesOfType[layout.type];
     const total = count.reduce((product, length) => product * length, size);
     const out = new Uint8Array(total);

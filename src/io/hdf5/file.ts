@@ -65,6 +65,11 @@ export class Hdf5File {
     });
   }
 
+  /** Whether the name stands for a path; of one that leads nowhere the library may claim any kind. */
+  isSoftLink(path: string): boolean {
+    return this.call(path, (module, id) => typeof module.get_symbolic_link(id, path) === 'string');
+  }
+
   namesIn(path: string): readonly string[] {
     return this.call(path, (module, id) => module.get_names(id, path, false));
   }

@@ -138,7 +138,8 @@ class Walk {
   /** What is wrong with one object is passed over; the rest may be sound. */
   private passOver(error: unknown, path: string): void {
     if (!isRimlightError(error) || error.kind !== 'scan' || this.file.isBroken) throw error;
-    this.left.damaged.push(path);
+    const list = path !== '/' && this.file.isSoftLink(path) ? this.left.broken : this.left.damaged;
+    list.push(path);
   }
 
   private noteLeftOut(): void {

@@ -585,7 +585,22 @@ describe('positions', () => {
     expect(wrong.problems[0]).toMatchObject({ kind: 'recipe', where: 'scan.pixel.x' });
   });
 
-  it('that are scattered make a row of points', async () => {
+  it('that are scattered make a row of points, in whatever order they are named', async () => {
+    const x = { shape: [3], data: [404.7, 811.9, 500.1] };
+    const y = { shape: [3], data: [-427.5, -36.6, 12] };
+    for (const places of [
+      { x_um: x, y_um: y },
+      { y_um: y, x_um: x },
+    ]) {
+      const rows = await inspect({
+        format: 'text',
+        arrays: { counts: numbered(1, 3, 10), axis: wavelengths(10), ...places },
+        notes: ['The 3 points are scattered, not on a grid.'],
+      });
+      expect(planOf(rows).meta.shape).toEqual({ ny: 1, nx: 3, nk: 10 });
+      expect(rows.warnings).toEqual(['The 3 points are scattered, not on a grid.']);
+    }
+
     const inspection = await inspect({
       format: 'text',
       arrays: {

@@ -124,7 +124,9 @@ async function findPlan(
   );
   if (pixel !== null) {
     note(findings, pixel.guess);
-    findings.warnings.push(...pixel.warnings);
+    // Readers that lay scattered points side by side have said so already.
+    const isSaid = container.notes.some((one) => one.includes('scattered'));
+    findings.warnings.push(...(isSaid ? [] : pixel.warnings));
   }
   const height = attempt(findings, () =>
     findHeight({

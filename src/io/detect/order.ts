@@ -209,22 +209,23 @@ function findRowAxis(question: OrderQuestion, first: number, second: number): Sp
   return { letters: yx, isFirm: false, evidence: 'rows before columns, as images are kept' };
 }
 
+/** Positions along x or y as long as one of the two axes; null when they are as long as both or contradict. */
 function rowsByPositions(
   { vectors }: OrderQuestion,
   a: number,
   b: number,
 ): { isRowsFirst: boolean; evidence: string } | null {
-  for (const { vector, role } of vectors) {
-    if (role.kind !== 'position' || role.along === null || vector.file !== null) continue;
+  const told = vectors.flatMap(({ vector, role }) => {
+    if (role.kind !== 'position' || role.along === null || vector.file !== null) return [];
     const length = vector.values.length;
-    if (length !== a && length !== b) continue;
-    const isFirst = length === a;
-    return {
-      isRowsFirst: (role.along === 'y') === isFirst,
-      evidence: `${vector.label} has ${length} values`,
-    };
-  }
-  return null;
+    if (length !== a && length !== b) return [];
+    const isRowsFirst = (role.along === 'y') === (length === a);
+    return [{ isRowsFirst, evidence: `${vector.label} has ${length} values` }];
+  });
+  const [first] = told;
+  return told.every(({ isRowsFirst }) => isRowsFirst === first.isRowsFirst)
+    ? (first ?? null)
+    : null;
 }
 
 /** Whether an axis name of the file belongs to the spectral axis. */

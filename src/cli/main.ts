@@ -1,10 +1,11 @@
 /** From the words of a call to its exit code: finds the command, runs it, tells its error in one line. */
 import { inspect } from 'node:util';
 import { version } from '../../package.json';
-import { ensureRimlightError, errorSentence, RimlightError } from '../errors';
+import { ensureRimlightError, RimlightError } from '../errors';
 import { nearestWord } from '../recipe/nearest';
 import type { Context } from './command';
 import { type Command, commands } from './commands';
+import { errorLine } from './error-line';
 import { done, exitCodeOf } from './exit-codes';
 import { commandHelp, programHelp } from './help';
 import { parseCall } from './options';
@@ -19,11 +20,6 @@ export async function main(words: readonly string[], context: Context): Promise<
     if (isDebug(words)) context.say(inspect(thrown));
     return exitCodeOf(error.kind);
   }
-}
-
-/** `rimlight: WHAT (WHERE). WHAT TO DO` */
-export function errorLine(error: RimlightError): string {
-  return `rimlight: ${errorSentence(error)}`;
 }
 
 async function dispatch(words: readonly string[], context: Context): Promise<number> {

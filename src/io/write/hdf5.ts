@@ -3,10 +3,10 @@
  * save a file, chunks can be shuffled and compressed at once, and no times are stored, so that the
  * same tree always gives the same bytes. Readable by HDF5 1.8 and later.
  */
-import { RimlightError, throwIfAborted } from '../../errors';
+import { RimlightError } from '../../errors';
 import type { CountsArray } from '../../science/scan';
 import type { ReadOptions } from '../container';
-import { ByteWriter, undefinedAddress } from './byte-writer';
+import { undefinedAddress } from './byte-writer';
 import {
   type Chunking,
   chunkStarts,
@@ -15,6 +15,7 @@ import {
   type PlacedChunk,
   writeChunkTree,
 } from './hdf5-chunks';
+import { Hdf5FileWriter } from './hdf5-file-writer';
 import {
   attributeMessage,
   chunkedLayout,
@@ -29,8 +30,7 @@ import {
   objectHeader,
   stringType,
 } from './hdf5-messages';
-import { StringHeap } from './hdf5-strings';
-import { lookup3 } from './lookup3';
+import type { StringHeap } from './hdf5-strings';
 
 /** A number is written as float64; a typed array keeps its type. */
 export type Hdf5Attribute = string | number | readonly string[] | readonly number[] | CountsArray;
@@ -60,10 +60,6 @@ export interface Hdf5Group {
 
 export type Hdf5Node = Hdf5Group | Hdf5Dataset;
 
-/** Compressing may take seconds: the event loop is let through after this many bytes. */
-const bytesBetweenPauses = 8 << 20;
-const superblockBytes = 48;
-
 /**
  * The whole file in memory.
  *
@@ -71,68 +67,14 @@ const superblockBytes = 48;
  *   'cancelled' - when stopped
  */
 export async function writeHdf5(root: Hdf5Group, options: ReadOptions = {}): Promise<Uint8Array> {
-  const writer = new FileWriter(options, bytesOf(root));
+  const writer = new Hdf5FileWriter(options, bytesOf(root));
   collectStrings(root, writer.strings);
   writer.strings.place(writer.append);
   const rootAddress = await writeGroup(writer, root, '');
   return writer.finish(rootAddress);
 }
 
-class FileWriter {
-  readonly strings = new StringHeap();
-  private readonly parts: Uint8Array[] = [];
-  private end = superblockBytes;
-  private encoded = 0;
-  private sincePause = 0;
-
-  constructor(
-    private readonly options: ReadOptions,
-    private readonly total: number,
-  ) {}
-
-  /** Puts bytes at the next address divisible by 8, and gives that address. */
-  readonly append = (bytes: Uint8Array): number => {
-    const gap = (8 - (this.end % 8)) % 8;
-    if (gap > 0) this.parts.push(new Uint8Array(gap));
-    const address = this.end + gap;
-    this.parts.push(bytes);
-    this.end = address + bytes.length;
-    return address;
-  };
-
-  /** Tells how far we are, lets other work in now and then, and stops when asked. */
-  async advance(bytes: number): Promise<void> {
-    this.encoded += bytes;
-    this.sincePause += bytes;
-    if (this.sincePause < bytesBetweenPauses) return;
-    this.sincePause = 0;
-    this.options.onProgress?.(Math.min(1, this.encoded / this.total));
-    await new Promise((resolve) => setTimeout(resolve));
-    throwIfAborted(this.options.signal, 'writing HDF5');
-  }
-
-  finish(rootAddress: number): Uint8Array {
-    const superblock = new ByteWriter()
-      .u8(0x89, 0x48, 0x44, 0x46, 0x0d, 0x0a, 0x1a, 0x0a)
-      .u8(2, 8, 8, 0)
-      .u64(0)
-      .u64(undefinedAddress)
-      .u64(this.end)
-      .u64(rootAddress);
-    superblock.u32(lookup3(superblock.take()));
-    const file = new Uint8Array(this.end);
-    file.set(superblock.take());
-    let at = superblockBytes;
-    for (const part of this.parts) {
-      file.set(part, at);
-      at += part.length;
-    }
-    this.options.onProgress?.(1);
-    return file;
-  }
-}
-
-async function writeGroup(writer: FileWriter, group: Hdf5Group, path: string): Promise<number> {
+async function writeGroup(writer: Hdf5FileWriter, group: Hdf5Group, path: string): Promise<number> {
   const attributes = attributeMessages(writer, group.attributes, path);
   const links: Message[] = [];
   for (const [name, node] of Object.entries(group.children)) {
@@ -148,7 +90,7 @@ async function writeGroup(writer: FileWriter, group: Hdf5Group, path: string): P
 }
 
 async function writeDataset(
-  writer: FileWriter,
+  writer: Hdf5FileWriter,
   dataset: Hdf5Dataset,
   path: string,
 ): Promise<number> {
@@ -180,7 +122,7 @@ async function writeDataset(
 }
 
 function storeNumbers(
-  writer: FileWriter,
+  writer: Hdf5FileWriter,
   values: CountsArray,
   shape: readonly number[] | null,
   { chunks, gzip = 0, shuffle = false }: Hdf5Dataset,
@@ -196,13 +138,13 @@ function storeNumbers(
   return chunked(writer, values, { shape, chunk, gzip, shuffle });
 }
 
-function contiguous(writer: FileWriter, bytes: Uint8Array): readonly Message[] {
+function contiguous(writer: Hdf5FileWriter, bytes: Uint8Array): readonly Message[] {
   const address = bytes.length === 0 ? undefinedAddress : writer.append(bytes);
   return [fillValueMessage(false), contiguousLayout(address, bytes.length)];
 }
 
 async function chunked(
-  writer: FileWriter,
+  writer: Hdf5FileWriter,
   values: CountsArray,
   chunking: Chunking,
 ): Promise<readonly Message[]> {
@@ -221,7 +163,7 @@ async function chunked(
 }
 
 function attributeMessages(
-  writer: FileWriter,
+  writer: Hdf5FileWriter,
   attributes: Hdf5Attributes | undefined,
   path: string,
 ): readonly Message[] {

@@ -78,6 +78,13 @@ describe('datasets that cannot be read', () => {
     );
   });
 
+  it('because their values are kept in another file', async () => {
+    const error = await refusalOf(caseOf('outside.h5', fixtureBytes('h5/outside.h5')));
+    expect(error.what).toMatch(/^the data could not be read: .*external raw data file/);
+    const { notes } = await openFixture(hdf5Reader, 'h5/elsewhere.h5');
+    expect(notes).toEqual(['/virtual is put together from other files and was left out.']);
+  });
+
   it('because there are none', async () => {
     const bytes = await writeHdf5({
       kind: 'group',

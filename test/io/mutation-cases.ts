@@ -21,6 +21,7 @@ export const mutationCases: readonly ReaderCase[] = [
     'h5/nexus.h5',
     'h5/links.h5',
     'h5/others.h5',
+    'h5/elsewhere.h5',
   ),
   ...from(
     tiffReader,

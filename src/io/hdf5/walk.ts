@@ -35,6 +35,7 @@ class Walk {
   private readonly left = {
     external: [] as string[],
     broken: [] as string[],
+    virtual: [] as string[],
     damaged: [] as string[],
   };
   /** identity → path under which a group was listed */
@@ -103,6 +104,11 @@ class Walk {
       this.fact(path, metadata);
       return;
     }
+    // Unfound parts would read as the fill value, which is no data of anybody's.
+    if (metadata.virtual_sources?.some(({ file_name }) => file_name !== '.') === true) {
+      this.left.virtual.push(path);
+      return;
+    }
     const bytes = valuesOf(shape, path) * bytesOfType[type];
     const chunkBytes =
       metadata.chunks === null ? 0 : valuesOf(metadata.chunks, path) * bytesOfType[type];
@@ -143,7 +149,7 @@ class Walk {
   }
 
   private noteLeftOut(): void {
-    const { external, broken, damaged } = this.left;
+    const { external, broken, virtual, damaged } = this.left;
     const say = (paths: readonly string[], one: string, many: string): void => {
       if (paths.length === 0) return;
       const more = paths.length > 3 ? ', …' : '';
@@ -153,6 +159,11 @@ class Walk {
       external,
       'leads to another file and was not followed',
       'lead to other files and were not followed',
+    );
+    say(
+      virtual,
+      'is put together from other files and was left out',
+      'are put together from other files and were left out',
     );
     say(broken, 'leads nowhere', 'lead nowhere');
     say(damaged, 'is damaged and was left out', 'are damaged and were left out');

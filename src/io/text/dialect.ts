@@ -13,6 +13,8 @@ export interface DialectFound {
   readonly isText: readonly boolean[];
   /** rows of numbers among the lines looked at */
   readonly rows: number;
+  /** cells that are numbers, those of a header of axis values too: they may alone tell the decimal mark */
+  readonly numbers: number;
 }
 
 /** In order of preference where several read the file equally well. */
@@ -42,13 +44,19 @@ function candidates(lines: readonly string[]): readonly Dialect[] {
 }
 
 function best(found: readonly DialectFound[]): DialectFound | null {
+  const order = (one: DialectFound): readonly number[] => [one.rows, one.columns, one.numbers];
   let top: DialectFound | null = null;
   for (const one of found) {
     if (one.rows === 0) continue;
-    if (top === null || one.rows > top.rows) top = one;
-    else if (one.rows === top.rows && one.columns > top.columns) top = one;
+    if (top === null || isGreater(order(one), order(top))) top = one;
   }
   return top;
+}
+
+/** The first place in which two lists differ decides. */
+function isGreater(a: readonly number[], b: readonly number[]): boolean {
+  const at = a.findIndex((value, i) => value !== b[i]);
+  return at >= 0 && a[at] > b[at];
 }
 
 function evaluated(lines: readonly string[], dialect: Dialect, mayHaveText: boolean): DialectFound {
@@ -71,7 +79,8 @@ function evaluated(lines: readonly string[], dialect: Dialect, mayHaveText: bool
   );
   const found = like.filter((cells) => isRowOfNumbers(cells, isText, dialect.mark));
   const isUsable = isText.filter((one) => !one).length >= (mayHaveText ? 2 : 1);
-  return { dialect, columns, isText, rows: isUsable ? found.length : 0 };
+  const numbers = like.flat().filter((cell) => kindOfCell(cell, dialect.mark) === 'number').length;
+  return { dialect, columns, isText, rows: isUsable ? found.length : 0, numbers };
 }
 
 /** Whether all columns but those of words hold a number or no data, and at least one a number. */

@@ -1,0 +1,260 @@
+/**
+ * The sums of one band for the pixels of one tile: of counts and of variances, times powers of energy.
+ * Two ways to the same sums: channel by channel, or from moments below the band's two ends.
+ */
+import type { BandPlan } from './band-plan';
+import { isCoarse } from './block-layout';
+import type { BlockSums, HighPlanes, LowPlanes } from './block-sums';
+import { type EdgeInProgress, type EdgeMoments, nearestEdge } from './edge-moments';
+import { highMoments, lowMoments, zeroNoData } from './moment-kernels';
+import { type SlabData, writeVariances } from './slab-data';
+import type { TileFloor } from './tile-floor';
+import { type Tile, tileChannels } from './tiled-counts';
+
+/** Moments below the first whole channel and below the last channel, for bands summed by difference. */
+export interface BandEdges {
+  readonly from: EdgeInProgress;
+  readonly to: EdgeInProgress;
+}
+
+/** Which sums are wanted beside those of the counts. */
+export interface WantedSums {
+  readonly variances: boolean;
+  /** third and fourth moments of the variances */
+  readonly high: boolean;
+}
+
+/** Sums and work arrays for one tile; every plane has one value per pixel. */
+export class TileSums {
+  /** Σ f c eʲ, j = 0 … 2; less the floor once it is taken */
+  readonly counts: LowPlanes;
+  /** Σ f² v eʲ, j = 0 … 4, of the counts as recorded */
+  readonly variances: readonly Float64Array[];
+  /** |Σ f c| and the floor's share of it together: what rounding of `counts` is measured by */
+  readonly gross: Float64Array;
+  readonly #data: SlabData;
+  #run = new Float64Array(0);
+  #varianceRun = new Float64Array(0);
+  /** the band's first and last channel: counts, and what their variances are made from */
+  readonly #ends: readonly Float64Array[];
+  readonly #weighed: readonly Float64Array[];
+  readonly #partial: HighPlanes;
+
+  constructor(data: SlabData) {
+    const plane = (): Float64Array => new Float64Array(data.tiled.tilePixels);
+    this.#data = data;
+    this.counts = [plane(), plane(), plane()];
+    this.variances = [plane(), plane(), plane(), plane(), plane()];
+    this.gross = plane();
+    this.#ends = [plane(), plane()];
+    this.#weighed = data.sums?.variances == null ? this.#ends : [plane(), plane()];
+    this.#partial = [plane(), plane()];
+  }
+
+  /** @param edges - null for a band summed channel by channel */
+  compute(plan: BandPlan, edges: BandEdges | null, tile: Tile, wanted: WantedSums): void {
+    if (edges === null) this.#bySpan(plan, tile, wanted);
+    else this.#byEdges(plan, edges, tile, wanted);
+    if (wanted.variances) this.#alongLine(plan, tile.pixels, wanted.high ? 5 : 3);
+  }
+
+  /** Takes the line under the band from the sums of counts. */
+  takeFloor(floor: TileFloor, { pixels }: Tile): void {
+    for (let p = 0; p < pixels; p++) {
+      this.gross[p] = Math.abs(this.counts[0][p]) + Math.abs(floor.taken(p, 0));
+      for (let order = 0; order < 3; order++) this.counts[order][p] -= floor.taken(p, order);
+    }
+  }
+
+  #bySpan(plan: BandPlan, tile: Tile, wanted: WantedSums): void {
+    const { context, affine, tiled } = this.#data;
+    const { first, last, firstShare, lastShare } = plan.channels;
+    const { pixels } = tile;
+    const length = (last + 1 - first) * pixels;
+    const values = this.#runOf(length);
+    const run = { values, pixels, k0: first, k1: last + 1 };
+    const shareEnds = (of: Float64Array): void => {
+      scale(of, 0, pixels, firstShare);
+      if (last > first) scale(of, length - pixels, length, lastShare);
+    };
+    tileChannels(tiled, tile, first, last + 1, values);
+    const [v0, v1, v2, v3, v4] = this.variances;
+    if (wanted.variances && affine === null) {
+      if (this.#varianceRun.length < length) this.#varianceRun = new Float64Array(length);
+      const weighed = { ...run, values: this.#varianceRun };
+      writeVariances(values, length, context.noise, weighed.values);
+      // Shares enter squared.
+      shareEnds(weighed.values);
+      shareEnds(weighed.values);
+      lowMoments(weighed, plan.energies, v0, v1, v2);
+      if (wanted.high) highMoments(weighed, plan.energies, v3, v4);
+    }
+    if (!context.isUnsigned) zeroNoData(values, length);
+    shareEnds(values);
+    lowMoments(run, plan.energies, ...this.counts);
+    if (!wanted.variances || affine === null) return;
+    const less = { first: 1 - firstShare, last: last > first ? 1 - lastShare : 0 };
+    const ends = [values.subarray(0, pixels), values.subarray(length - pixels, length)];
+    const energies = { first: plan.energies[first], last: plan.energies[last] };
+    withSquaredShares(this.counts, ends, less, energies, pixels, this.variances);
+    if (!wanted.high) return;
+    shareEnds(values);
+    highMoments(run, plan.energies, v3, v4);
+  }
+
+  #byEdges(plan: BandPlan, edges: BandEdges, tile: Tile, wanted: WantedSums): void {
+    const from = edges.from.moments;
+    const to = edges.to.moments;
+    const { firstShare, lastShare, first, last } = plan.channels;
+    this.#readEnds(from, to, tile);
+    const weights = { first: firstShare, last: lastShare };
+    const energies = { first: plan.energies[first], last: plan.energies[last] };
+    betweenEdges(from.counts, to.counts, this.#ends, weights, energies, tile, this.counts);
+    if (!wanted.variances) return;
+    const squares = { first: firstShare * firstShare, last: lastShare * lastShare };
+    if (from.variances !== null && to.variances !== null) {
+      const { variances } = this;
+      betweenEdges(from.variances, to.variances, this.#weighed, squares, energies, tile, variances);
+    } else {
+      const less = { first: firstShare - squares.first, last: lastShare - squares.last };
+      withSquaredShares(this.counts, this.#ends, less, energies, tile.pixels, this.variances);
+    }
+    if (wanted.high) this.#highByEdges(plan, tile, squares);
+  }
+
+  /** No data as 0. */
+  #readEnds(from: EdgeMoments, to: EdgeMoments, { first, pixels }: Tile): void {
+    const { context } = this.#data;
+    const [counts, lastCounts] = this.#ends;
+    counts.set(from.below.subarray(first, first + pixels));
+    lastCounts.set(to.above.subarray(first, first + pixels));
+    if (this.#weighed !== this.#ends) {
+      writeVariances(counts, pixels, context.noise, this.#weighed[0]);
+      writeVariances(lastCounts, pixels, context.noise, this.#weighed[1]);
+    }
+    if (context.isUnsigned) return;
+    zeroNoData(counts, pixels);
+    zeroNoData(lastCounts, pixels);
+  }
+
+  #highByEdges({ channels, energies }: BandPlan, tile: Tile, squares: EndPair): void {
+    const { sums } = this.#data;
+    if (sums === null) return;
+    const [, , , third, fourth] = this.variances;
+    const [low3, low4] = this.#partial;
+    const [first, last] = this.#weighed;
+    this.#highBelow(sums, channels.last, tile, third, fourth);
+    this.#highBelow(sums, channels.first + 1, tile, low3, low4);
+    const e1 = energies[channels.first];
+    const e2 = energies[channels.last];
+    const cube1 = squares.first * e1 * e1 * e1;
+    const cube2 = squares.last * e2 * e2 * e2;
+    for (let p = 0; p < tile.pixels; p++) {
+      third[p] = third[p] - low3[p] + (first[p] * cube1 + last[p] * cube2);
+      fourth[p] = fourth[p] - low4[p] + (first[p] * cube1 * e1 + last[p] * cube2 * e2);
+    }
+  }
+
+  /** Third and fourth moments of channels 0 … k − 1. */
+  #highBelow(
+    sums: BlockSums,
+    k: number,
+    tile: Tile,
+    third: Float64Array,
+    fourth: Float64Array,
+  ): void {
+    const { tiled, context, energies } = this.#data;
+    const { layout } = sums;
+    const { first, pixels } = tile;
+    const nearest = nearestEdge(layout.edges, k, (index) => isCoarse(layout, index));
+    const k0 = Math.min(k, nearest.k);
+    const k1 = Math.max(k, nearest.k);
+    const length = (k1 - k0) * pixels;
+    const values = this.#runOf(length);
+    tileChannels(tiled, tile, k0, k1, values);
+    if (sums.variances !== null) writeVariances(values, length, context.noise, values);
+    else if (!context.isUnsigned) zeroNoData(values, length);
+    highMoments({ values, pixels, k0, k1 }, energies, third, fourth);
+    const kept = nearest.index < 0 ? null : sums.high[nearest.index];
+    if (kept === null) return;
+    const [kept3, kept4] = kept;
+    const sign = nearest.k <= k ? 1 : -1;
+    for (let p = 0; p < pixels; p++) {
+      third[p] = kept3[first + p] + sign * third[p];
+      fourth[p] = kept4[first + p] + sign * fourth[p];
+    }
+  }
+
+  /** From sums of counts to sums of variances, where these are a line of them. */
+  #alongLine({ shareSquares }: BandPlan, pixels: number, orders: number): void {
+    const { affine } = this.#data;
+    if (affine === null || (affine.slope === 1 && affine.constant === 0)) return;
+    for (let order = 0; order < orders; order++) {
+      const plane = this.variances[order];
+      const added = affine.constant * shareSquares[order];
+      for (let p = 0; p < pixels; p++) plane[p] = affine.slope * plane[p] + added;
+    }
+  }
+
+  #runOf(length: number): Float64Array {
+    if (this.#run.length < length) this.#run = new Float64Array(length);
+    return this.#run;
+  }
+}
+
+/** A number for each of the band's two end channels. */
+interface EndPair {
+  readonly first: number;
+  readonly last: number;
+}
+
+function scale(values: Float64Array, from: number, to: number, by: number): void {
+  if (by === 1) return;
+  for (let i = from; i < to; i++) values[i] *= by;
+}
+
+/** Zeroth to second moments of the whole channels between two edges and the weighted channels outside them. */
+function betweenEdges(
+  [b0, b1, b2]: LowPlanes,
+  [a0, a1, a2]: LowPlanes,
+  [first, last]: readonly Float64Array[],
+  weights: EndPair,
+  energies: EndPair,
+  { first: offset, pixels }: Tile,
+  [s0, s1, s2]: readonly Float64Array[],
+): void {
+  const { first: w1, last: w2 } = weights;
+  const { first: e1, last: e2 } = energies;
+  for (let p = 0; p < pixels; p++) {
+    const at = offset + p;
+    const c1 = first[p] * w1;
+    const c2 = last[p] * w2;
+    const c1e = c1 * e1;
+    const c2e = c2 * e2;
+    s0[p] = a0[at] - b0[at] + (c1 + c2);
+    s1[p] = a1[at] - b1[at] + (c1e + c2e);
+    s2[p] = a2[at] - b2[at] + (c1e * e1 + c2e * e2);
+  }
+}
+
+/** Σ f² c eʲ from Σ f c eʲ: less (f − f²) c eʲ of the two end channels, as `ends` times `less`. */
+function withSquaredShares(
+  [s0, s1, s2]: LowPlanes,
+  [first, last]: readonly Float64Array[],
+  less: EndPair,
+  energies: EndPair,
+  pixels: number,
+  [v0, v1, v2]: readonly Float64Array[],
+): void {
+  const { first: w1, last: w2 } = less;
+  const { first: e1, last: e2 } = energies;
+  for (let p = 0; p < pixels; p++) {
+    const c1 = first[p] * w1;
+    const c2 = last[p] * w2;
+    const c1e = c1 * e1;
+    const c2e = c2 * e2;
+    v0[p] = s0[p] - (c1 + c2);
+    v1[p] = s1[p] - (c1e + c2e);
+    v2[p] = s2[p] - (c1e * e1 + c2e * e2);
+  }
+}

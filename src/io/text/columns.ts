@@ -12,8 +12,8 @@ import { nameOfColumn, type Table } from './table';
 import { numberAt, rowsOf } from './table-rows';
 import { columnOf, GrowingColumn } from './value-range';
 
-/** 512 MB of doubles: far more channels than any spectrum has. */
-const mostValues = 64 << 20;
+/** Far more channels than any spectrum has. */
+const mostRows = 4 << 20;
 
 interface ColumnsRead {
   readonly columns: readonly GrowingColumn[];
@@ -72,9 +72,9 @@ async function columnsOf(
       }
       lines.push(batchLines[i]);
     });
-    if (lines.length * numbers.length > mostValues) {
+    if (lines.length > mostRows) {
       throw scanError(
-        `the table has more than ${lines.length} rows of ${numbers.length} columns, which is no spectrum`,
+        `the table has more than ${mostRows} rows of ${numbers.length} columns, which is no spectrum`,
         table.file.source.name,
         'Name the columns if it is a map (x, y, axis, counts), or save it as HDF5 or npy.',
       );

@@ -78,9 +78,18 @@ function evaluated(lines: readonly string[], dialect: Dialect, mayHaveText: bool
         like.length,
   );
   const found = like.filter((cells) => isRowOfNumbers(cells, isText, dialect.mark));
-  const isUsable = isText.filter((one) => !one).length >= (mayHaveText ? 2 : 1);
+  const isUsable =
+    isText.filter((one) => !one).length >= (mayHaveText ? 2 : 1) &&
+    isText.every(
+      (one, i) => !one || 2 * like.filter((cells) => isWord(cells[i])).length > like.length,
+    );
   const numbers = like.flat().filter((cell) => kindOfCell(cell, dialect.mark) === 'number').length;
   return { dialect, columns, isText, rows: isUsable ? found.length : 0, numbers };
+}
+
+/** A word, a date or a time; "600;1.5" is two numbers that another separator would part. */
+function isWord(cell: string): boolean {
+  return /\p{L}/u.test(cell) || /^\s*\d{1,4}([-/:.])\d{1,2}\1\d{1,4}\b/.test(cell);
 }
 
 /** Whether all columns but those of words hold a number or no data, and at least one a number. */

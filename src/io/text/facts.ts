@@ -32,11 +32,15 @@ export function factsOf(lines: readonly HeadLine[], delimiter: Delimiter): Facts
   return Object.fromEntries(facts);
 }
 
+export interface Fact {
+  readonly key: string;
+  readonly value: string | number;
+  /** written with a colon or an equals sign, so no names of two columns */
+  readonly isStatement: boolean;
+}
+
 /** "laser: 532 nm", "laser = 532 nm", or two cells "laser", "532 nm"; null for any other line. */
-export function factOf(
-  text: string,
-  delimiter: Delimiter,
-): { readonly key: string; readonly value: string | number } | null {
+export function factOf(text: string, delimiter: Delimiter): Fact | null {
   const named = /^\s*([^:=,;\t]{1,80}?)\s*[:=]\s*(\S.*)$/.exec(text);
   const cells =
     named !== null || delimiter === ' ' ? [] : withoutEmptyEnd(splitCells(text, delimiter));
@@ -45,7 +49,8 @@ export function factOf(
   if (!/\p{L}/u.test(key) || key.length > 80 || value === '' || /^sep$/i.test(key)) return null;
   const shown = value.replace(/[\s,;]+$/, '').slice(0, 500);
   const number = /^[+-]?\d/.test(shown) ? cellNumber(shown, '.') : undefined;
-  return { key, value: number === undefined || Number.isNaN(number) ? shown : number };
+  const isStatement = named !== null;
+  return { key, value: number === undefined || Number.isNaN(number) ? shown : number, isStatement };
 }
 
 export function withoutEmptyEnd(cells: readonly string[]): readonly string[] {

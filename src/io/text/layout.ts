@@ -43,6 +43,14 @@ export type Layout =
       /** x, y and one more column may as well be a spectrum */
       readonly isSure: boolean;
     }
+  /** a row per channel, a column per spectrum, after the column of the axis */
+  | {
+      readonly kind: 'turned';
+      readonly axis: number;
+      readonly values: readonly number[];
+      /** the numbers of the spectra's headings: 1, 2, 3 of "run 1"; null where they have none */
+      readonly spectra: HeaderAxis | null;
+    }
   /** one spectrum; without names it may turn out to be a matrix */
   | {
       readonly kind: 'columns';
@@ -53,8 +61,10 @@ export type Layout =
 
 /** More columns without names are a matrix of values. */
 const mostNamelessColumns = 12;
-/** Fewer numbered columns ("run 1", "run 2") beside positions are values, not channels. */
-const fewestNumberedChannels = 8;
+/** Fewer numbered columns ("run 1", "run 2") are looked at one by one. */
+const fewestNumbered = 8;
+/** More columns with names are no list of single spectra. */
+const mostNamedColumns = 256;
 
 export function findLayout(table: Table): Layout {
   const { headings } = table;
@@ -63,7 +73,12 @@ export function findLayout(table: Table): Layout {
     ? namelessLayout(table, columns)
     : (spectraByHeader(headings, columns) ??
         positionedLayout(table, headings, columns) ??
-        labelledLong(table, headings, columns) ?? { kind: 'columns', columns, mayBeMatrix: false });
+        labelledLong(table, headings, columns) ??
+        spectraInColumns(table, headings, columns) ?? {
+          kind: 'columns',
+          columns,
+          mayBeMatrix: false,
+        });
 }
 
 function namelessLayout(table: Table, columns: readonly number[]): Layout {
@@ -124,7 +139,7 @@ function positionedLayout(
   if (position === null || columns.length < 3) return null;
   const { x, y } = position;
   const rest = columns.filter((column) => column !== x && column !== y);
-  if (rest.length >= fewestNumberedChannels) {
+  if (rest.length >= fewestNumbered) {
     const numbered = numbersAfterOneWord(
       rest.map((column) => headings[column]),
       table.dialect.mark,
@@ -135,7 +150,10 @@ function positionedLayout(
     }
   }
   const channel = rest.find((column) => headings[column].isSpectral);
-  const isRepeated = repeats(table, x, y);
+  const places = placesIn(table, x, y);
+  const rows = table.sample.length;
+  // One repeated place may be a slip; without an axis by name it takes more.
+  const isRepeated = channel === undefined ? 2 * places <= rows : places < rows;
   const isChannelSlow = channel !== undefined && isConstant(table, channel);
   if (rest.length >= 2 && (isRepeated || isChannelSlow)) {
     const own = channel ?? rest[0];
@@ -160,6 +178,22 @@ function labelledLong(
   return { kind: 'long', labels: [label], position: null, channel, values };
 }
 
+/** "wavelength_nm, run 1, run 2, …", or so many columns that they are spectra whatever they are called. */
+function spectraInColumns(
+  table: Table,
+  headings: readonly Heading[],
+  columns: readonly number[],
+): Layout | null {
+  const [axis, ...values] = columns;
+  const named = values.map((column) => headings[column]);
+  const numbered =
+    values.length >= fewestNumbered ? numbersAfterOneWord(named, table.dialect.mark) : null;
+  const isMany = columns.length > mostNamedColumns;
+  if (!isMany && (numbered === null || !headings[axis].isSpectral)) return null;
+  const spectra = numbered === null ? null : { ...numbered, unit: null };
+  return { kind: 'turned', axis, values, spectra };
+}
+
 /** Whether the labels stay while the channel runs one way, and change only where it begins anew. */
 function isLong(table: Table, labels: readonly number[], channel: number): boolean {
   const rows = table.sample.map((cells) => ({
@@ -176,15 +210,11 @@ function isLong(table: Table, labels: readonly number[], channel: number): boole
   });
 }
 
-/** Whether two of the first rows are at one place. */
-function repeats({ sample, dialect }: Table, x: number, y: number): boolean {
-  const seen = new Set<string>();
-  for (const cells of sample) {
-    const place = `${cellNumber(cells[x], dialect.mark)},${cellNumber(cells[y], dialect.mark)}`;
-    if (seen.has(place)) return true;
-    seen.add(place);
-  }
-  return false;
+/** How many places the first rows are at. */
+function placesIn({ sample, dialect }: Table, x: number, y: number): number {
+  const place = (cells: readonly string[]): string =>
+    `${cellNumber(cells[x], dialect.mark)},${cellNumber(cells[y], dialect.mark)}`;
+  return new Set(sample.map(place)).size;
 }
 
 function isConstant({ sample, dialect }: Table, column: number): boolean {

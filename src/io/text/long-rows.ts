@@ -195,7 +195,7 @@ class LongPass {
     const odd = this.counts.findIndex((count) => count !== channels);
     if (odd >= 0) {
       throw scanError(
-        `${this.named(odd)} has ${this.counts[odd]} channels, and the axis has ${channels}`,
+        `${this.named(odd)} has ${this.counts[odd] === 1 ? '1 channel' : `${this.counts[odd]} channels`}, and the axis has ${channels}`,
         this.where(this.lines[odd]),
         'Give every point the same channels; write NaN where there is no value.',
       );

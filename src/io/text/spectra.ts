@@ -63,6 +63,28 @@ export async function readMatrix(
   return { arrays: [cubeOf('', shape, table, columns, read, null, '')], notes: [] };
 }
 
+/** A row per channel: (channels, spectra), with the axis beside it. */
+export async function readTurned(
+  table: Table,
+  { axis, values, spectra }: Extract<Layout, { readonly kind: 'turned' }>,
+  options: ReadOptions,
+): Promise<Content> {
+  const read = await readRows(table, [axis], values, options);
+  const shape = [read.rows, values.length];
+  const [name, number] = distinctNames(
+    [nameOfColumn(table.headings, axis), spectra?.word || 'number'],
+    ['counts'],
+  );
+  return {
+    arrays: [
+      cubeOf('counts', shape, table, values, read, null, ''),
+      heldColumn(name, read.labels[0], attributesOf(table.headings?.[axis] ?? null, name)),
+      ...(spectra === null ? [] : [heldColumn(number, columnOf(spectra.values))]),
+    ],
+    notes: [`The ${values.length} columns after ${name} were taken for one spectrum each.`],
+  };
+}
+
 async function readRows(
   table: Table,
   labelColumns: readonly number[],

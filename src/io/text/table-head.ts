@@ -94,8 +94,8 @@ function refuseDoubtfulComma(
   split: Split,
   fileName: string,
 ): void {
-  const isFact = last !== undefined && factOf(last.text, found.dialect.delimiter) !== null;
-  const words = last === undefined || isFact ? null : withoutEmptyEnd(split(last));
+  const words =
+    last === undefined || isStatement(last, found) ? null : withoutEmptyEnd(split(last));
   const names = words?.every((cell) => kindOfCell(cell, '.') === 'text') ? words : null;
   if (rows.length === 0 || !isDoubtfulComma(found.dialect, rows, names)) return;
   throw scanError(
@@ -105,12 +105,17 @@ function refuseDoubtfulComma(
   );
 }
 
+function isStatement({ text }: HeadLine, { dialect }: DialectFound): boolean {
+  return factOf(text, dialect.delimiter)?.isStatement === true;
+}
+
 function notesOn(
   header: Header | null,
   last: HeadLine | undefined,
-  { dialect, columns }: DialectFound,
+  found: DialectFound,
   split: Split,
 ): readonly string[] {
+  const { dialect, columns } = found;
   const notes: string[] = [];
   if (dialect.mark === ',') notes.push('Commas were read as decimal marks.');
   if (header?.isOneShort === true) {
@@ -118,7 +123,7 @@ function notesOn(
       'The header has one name fewer than the rows have cells: the first column is taken to be without a name.',
     );
   }
-  if (header === null && last !== undefined && factOf(last.text, dialect.delimiter) === null) {
+  if (header === null && last !== undefined && !isStatement(last, found)) {
     const cells = split(last).length;
     if (cells > 1 && cells !== columns && dialect.delimiter !== ' ') {
       notes.push(

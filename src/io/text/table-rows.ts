@@ -105,7 +105,10 @@ function raggedAt(
       'Copy it again, or take the last line out.',
     );
   }
-  if (cells.length === 1 && /[\t;, ]/.test(cells[0].trim())) return otherSeparator(cells[0], where);
+  const parts = cells.length === 1 ? cells[0].trim().split(/[\t;, ]+/) : [];
+  if (parts.length > 1 && parts.every((part) => cellNumber(part, '.') !== undefined)) {
+    return otherSeparator(cells[0], where);
+  }
   return raggedRow(cells.length, columns, where);
 }
 

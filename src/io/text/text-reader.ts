@@ -16,7 +16,7 @@ import type { Content, StoredEntry } from './content';
 import { decodeText, encodingOf, isBinary } from './encoding';
 import { findLayout } from './layout';
 import { readLong } from './long';
-import { readMatrix, readSpectra } from './spectra';
+import { readMatrix, readSpectra, readTurned } from './spectra';
 import { openTable, type Table } from './table';
 
 export const textReader: Reader = {
@@ -47,6 +47,8 @@ function contentOf(table: Table, options: ReadOptions): Promise<Content> {
       return readLong(table, layout, options);
     case 'points':
       return readPoints(table, layout, options);
+    case 'turned':
+      return readTurned(table, layout, options);
     case 'columns':
       return readColumns(table, layout, options);
     case 'matrix':

@@ -560,6 +560,37 @@ describe('positions', () => {
     expect(planOf(inspection).resolved.pixel).toBeUndefined();
   });
 
+  it('are known by their name or their long name, and are no wavelengths though in nm', async () => {
+    const inspection = await inspect({
+      arrays: {
+        counts: numbered(4, 3, 10),
+        wavelength: wavelengths(10),
+        stage_y: { shape: [4], data: ramp(4, 500, 20), attributes: { units: 'nm' } },
+        position: {
+          shape: [3],
+          data: ramp(3, 400, 15),
+          attributes: { units: 'nm', long_name: 'x [nm]' },
+        },
+      },
+    });
+    const { x, y } = planOf(inspection).meta;
+    expect([x.label, x.pitch, y.label, y.pitch]).toEqual(['x', 15, 'y', 20]);
+    expect(guess(inspection, 'order').source).toBe('file');
+    expect(guess(inspection, 'axis').alternatives).toEqual([]);
+  });
+
+  it('along a line in µm are a distance, not a wavelength', async () => {
+    const inspection = await inspect({
+      arrays: {
+        counts: numbered(10, 10),
+        wavelength: wavelengths(10),
+        along: { shape: [10], data: ramp(10, 0, 0.5), attributes: { units: 'um' } },
+      },
+    });
+    expect(planOf(inspection).meta.x).toMatchObject({ label: 'along', unit: 'nm', pitch: 500 });
+    expect(guess(inspection, 'axis').alternatives).toEqual([]);
+  });
+
   it('are read from attributes of the cube', async () => {
     const inspection = await inspect({
       arrays: {

@@ -140,13 +140,17 @@ describe.runIf(isThere)('the emulsion map', () => {
       label: '/entry/data/intensity · 60 × 60 × 253, float64',
     });
     const expected = await countsOf(npy);
-    for (const other of [h5, tsv]) {
+    const differing = async (other: Looked): Promise<readonly number[]> => {
       const counts = await countsOf(other);
       expect(counts.length).toBe(expected.length);
-      expect(counts.every((value, i) => value === expected[i])).toBe(true);
       expect(planOf(other).meta.axis).toEqual(planOf(npy).meta.axis);
       expect(planOf(other).meta.shape).toEqual(planOf(npy).meta.shape);
-    }
+      return Array.from(expected.keys()).filter((i) => counts[i] !== expected[i]);
+    };
+    expect(await differing(h5)).toEqual([]);
+    // One value was written a last bit apart, -0.060533 for -0.060533000000000003 (numpy.loadtxt finds
+    // the same one): pixel 1383, the 227th of 253 shifts upwards, channel 26 in energy.
+    expect(await differing(tsv)).toEqual([1383 * 253 + 26]);
   });
 
   it('as text has bare numbers for an axis, which is not enough', async () => {
@@ -359,7 +363,12 @@ describe.runIf(isThere)('five Raman set-ups', () => {
       const shift = (k: number) => shiftCm1FromEv(meta.axis.centresEv[k], meta.laserEv ?? 0);
       expect(shift(0)).toBeCloseTo(1808.186523, 6);
       expect(shift(1014)).toBeCloseTo(712.416, 2);
-      expect(looked.inspection.warnings.join(' ')).toMatch(/scattered|not on a grid/);
+      expect(looked.inspection.warnings.join(' ')).toContain('scattered');
+      expect(guess(looked, 'pixel')).toMatchObject({
+        source: 'file',
+        label: `${points} scattered points`,
+      });
+      expect(guess(looked, 'data').alternatives).toEqual([]);
     }
   });
 

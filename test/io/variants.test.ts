@@ -35,6 +35,8 @@ interface Variant {
   readonly bytes: Uint8Array;
   readonly choices?: ScanChoices;
   readonly companions?: Readonly<Record<string, Uint8Array>>;
+  /** x and y, where the file gives positions */
+  readonly pitchNm?: readonly [x: number, y: number];
   /** only this pixel is in the file */
   readonly pixel?: readonly [y: number, x: number];
 }
@@ -255,6 +257,7 @@ function textVariants(): Variant[] {
       name: 'text, long rows',
       file: 'scan.csv',
       bytes: longText(wavelengthsNm, 'wavelength_nm', up, ','),
+      pitchNm: [500, 250],
     },
     {
       name: 'text, long rows of a descending shift',
@@ -309,5 +312,8 @@ describe('a scan gives the same axis and counts', () => {
     }
     expect([...slab.counts]).toEqual(expected);
     expect(meta.noise).toEqual({ kind: 'poisson' });
+    if (variant.pitchNm !== undefined) {
+      expect([meta.x.pitch, meta.y.pitch, meta.x.unit]).toEqual([...variant.pitchNm, 'nm']);
+    }
   });
 });

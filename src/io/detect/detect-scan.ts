@@ -187,9 +187,12 @@ async function findPlan(
 
 function noteOrder(findings: Findings, found: FoundOrder, entry: ArrayEntry): void {
   const { order, source, evidence, alternatives, warning } = found;
-  const words = { y: 'rows', x: 'columns', k: 'channels' } as const;
+  const words = { y: 'row', x: 'column', k: 'channel' } as const;
   const label = [...order]
-    .map((letter, axis) => `${entry.shape[axis]} ${words[letter as 'y' | 'x' | 'k']}`)
+    .map(
+      (letter, axis) =>
+        `${entry.shape[axis]} ${words[letter as 'y' | 'x' | 'k']}${entry.shape[axis] === 1 ? '' : 's'}`,
+    )
     .join(' × ');
   note(findings, { field: 'order', label: `${order} · ${label}`, source, evidence, alternatives });
   if (warning !== null) findings.warnings.push(warning);

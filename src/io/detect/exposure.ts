@@ -56,7 +56,12 @@ export function findSerpentine(
     isSerpentine,
     guess: {
       field: 'serpentine' as const,
-      label: isSerpentine ? 'odd rows right to left' : 'every row left to right',
+      label:
+        source === 'absent'
+          ? '–'
+          : isSerpentine
+            ? 'odd rows right to left'
+            : 'every row left to right',
       source,
       evidence,
       alternatives:

@@ -38,7 +38,8 @@ export function findNoise(
   quantity: string,
 ): { readonly noise: NoiseModel; readonly guess: Guess } {
   if (stated !== undefined) return statedDetector(stated);
-  const seen = `${sample.looked === sample.finite ? '' : `${formatCount(sample.finite)} with data of `}${formatCount(sample.looked)} values looked at`;
+  const missing = sample.looked - sample.finite;
+  const seen = `${formatCount(sample.looked)} values looked at${missing === 0 ? '' : `, ${formatCount(missing)} of them without data`}`;
   const guess = (
     label: string,
     evidence: string,

@@ -2,7 +2,7 @@
 import type { AxisKind, AxisUnit } from '../../science/axis';
 import type { Container } from '../container';
 import { type Vector, type VectorFacts, vectorLength } from './vectors';
-import type { KnownUnit } from './words';
+import { type KnownUnit, nmIn, textAttribute } from './words';
 
 /** A spectral scale read from words or numbers, with the reason; `isFirm` when the file itself says so. */
 export interface ScaleReading {
@@ -33,12 +33,12 @@ const spectralUnits: readonly KnownUnit[] = ['nm', 'um', 'angstrom', 'eV', 'meV'
 
 /** What one vector can be, by its words, unit and numbers, in this order of trust. */
 export function roleOf(vector: Vector): Role {
-  const { words, facts } = vector;
+  const { words, names, facts } = vector;
   const unit = vector.unit?.unit ?? null;
   const named = namedScale(vector);
   if (named !== null) return { kind: 'scale', scale: named };
-  if (pixelWords.test(words)) return pixelRole(facts);
-  const along = positionAlong(words);
+  if (names.some((name) => pixelWords.test(name))) return pixelRole(facts);
+  const along = positionAlong(names);
   if (along !== undefined && unit !== 'cm-1' && unit !== 'eV' && unit !== 'meV') {
     return { kind: 'position', along };
   }
@@ -47,18 +47,24 @@ export function roleOf(vector: Vector): Role {
   }
   if (valueWords.test(words) || unit === 'counts') return { kind: 'values' };
   if (unit !== null && spectralUnits.includes(unit) && facts.direction !== 'mixed') {
-    return { kind: 'scale', scale: scaleOfUnit(unit, vector) };
+    const isDistance = nmIn(unit) !== null && !isLikeWavelengths(unit, vector);
+    return isDistance
+      ? { kind: 'position', along: null }
+      : { kind: 'scale', scale: scaleOfUnit(unit, vector) };
   }
   if (facts.direction === 'mixed') return { kind: 'values' };
   if (facts.isIndex) return { kind: 'pixels' };
   return { kind: 'ramp', isNamed: words !== '' && !/^(column|col|array|arr)? ?\d*$/.test(words) };
 }
 
-function positionAlong(words: string): 'x' | 'y' | null | undefined {
-  const match = positionWords.exec(words);
-  if (match) return (match[1] ?? match[5]) === 'y' ? 'y' : 'x';
-  if (!rowColumnWords.test(words)) return undefined;
-  return /^(row|line)/.test(words) ? 'y' : 'x';
+/** Undefined for what is named as no position. */
+function positionAlong(names: readonly string[]): 'x' | 'y' | undefined {
+  for (const name of names) {
+    const match = positionWords.exec(name);
+    if (match) return (match[1] ?? match[5]) === 'y' ? 'y' : 'x';
+    if (rowColumnWords.test(name)) return /^(row|line)/.test(name) ? 'y' : 'x';
+  }
+  return undefined;
 }
 
 /** A pixel column of whole numbers counts pixels; one with fractions below zero can only be a Raman shift. */
@@ -123,6 +129,13 @@ function scaleOfUnit(unit: KnownUnit, vector: Vector): ScaleReading {
   return { kind: 'wavelength', unit: length, evidence, isFirm: true };
 }
 
+/** A length without a telling name: wavelengths of light lie between 0.18 and 20 µm, distances mostly do not. */
+function isLikeWavelengths(unit: KnownUnit, { words, facts }: Vector): boolean {
+  if (/\b(distance|offset|depth|length|line|stage|position|z)\b/.test(words)) return false;
+  const perNm = nmIn(unit) ?? Number.NaN;
+  return facts.min * perNm >= 180 && facts.max * perNm <= 20_000;
+}
+
 /** Wavelengths without a unit: micrometres stay below 25, ångströms of the visible lie above 3000. */
 function wavelengthUnit(facts: VectorFacts): 'nm' | 'um' | 'angstrom' {
   if (facts.max < 25) return 'um';
@@ -162,9 +175,11 @@ export function scaleOfNumbers(facts: VectorFacts): ScaleReading | null {
   return null;
 }
 
-function nameShown(vector: Vector): string {
-  const name = vector.entry.path.split('/').at(-1) ?? '';
-  return name === '' ? (vector.file ?? 'the array') : name;
+/** The fuller name, which is the one that tells. */
+function nameShown({ entry, file }: Vector): string {
+  const longName = textAttribute(entry.attributes, 'long_name', 'label', 'title');
+  const name = longName ?? entry.path.split('/').at(-1) ?? '';
+  return name === '' ? (file ?? 'the array') : name;
 }
 
 export function shown(value: number): string {

@@ -1,7 +1,7 @@
 /** One-dimensional arrays of a file and its companions: read once, described, and told apart by what they can be. */
 import type { ArrayEntry, Container, ReadOptions } from '../container';
 import type { Companion } from '../scan-plan';
-import { type EntryUnit, entryUnit, entryWords, nameOf, spaced } from './words';
+import { type EntryUnit, entryUnit, nameOf, spaced, textAttribute } from './words';
 
 export interface Vector {
   /** companion's file name; null for the scan file itself */
@@ -10,7 +10,9 @@ export interface Vector {
   readonly values: Float64Array;
   /** as shown: "/scan/energy", or "axis.csv" */
   readonly label: string;
-  /** name and long name, in lower case with single spaces */
+  /** name, long name and, for an array without a name, its file's: in lower case with single spaces */
+  readonly names: readonly string[];
+  /** all of `names` in one */
   readonly words: string;
   readonly unit: EntryUnit | null;
   readonly facts: VectorFacts;
@@ -79,13 +81,16 @@ async function readVector(
 ): Promise<Vector> {
   const start = entry.shape.map(() => 0);
   const values = Float64Array.from(await container.read(entry.path, start, entry.shape, options));
-  const stem = file === null || entry.path !== '' ? '' : spaced(file.replace(/\.[^.]+$/, ''));
+  const stem = file === null || entry.path !== '' ? '' : file.replace(/\.[^.]+$/, '');
+  const longName = textAttribute(entry.attributes, 'long_name', 'label', 'title') ?? '';
+  const names = [nameOf(entry.path), longName, stem].map(spaced).filter((name) => name !== '');
   return {
     file,
     entry,
     values,
     label: labelOf(file, entry, container),
-    words: `${entryWords(entry)} ${stem}`.trim(),
+    names,
+    words: names.join(' '),
     unit: entryUnit(entry) ?? unitOfFileName(file, entry),
     facts: vectorFacts(values),
   };

@@ -4,23 +4,18 @@
  */
 import { RimlightError } from '../../errors';
 import type { RecordedAxis } from '../../science/axis';
-import type { ScanMeta } from '../../science/scan';
 import type { ArrayEntry, Container, ReadOptions } from '../container';
 import type { ScanChoices } from '../scan-choices';
 import type { Companion, CubePlan, GuessField, Inspection, ScanPlan } from '../scan-plan';
-import { statedAxisLength } from './axis-source';
-import { entryLabel, findCube } from './cube';
-import { findExposure, findSerpentine } from './exposure';
 import { attempt, type Evidence, type Findings, note } from './findings';
-import { findHeight, heightEntries } from './height';
-import { findNexusSignal } from './nexus';
+import { findLayout } from './layout';
 import { findNoise, quantityOf } from './noise';
-import { type FoundOrder, findOrder } from './order';
-import { findPixel } from './pixel';
+import type { FoundOrder } from './order';
 import { resolvedChoices } from './resolve';
 import { assignRoles } from './roles';
 import { sampleValuesOf } from './sample';
 import { readSayings } from './sayings';
+import { findSetting } from './setting';
 import { findSpectral } from './spectral';
 import { readVectors } from './vectors';
 
@@ -78,75 +73,13 @@ async function findPlan(
   findings: Findings,
   options: ReadOptions,
 ): Promise<ScanPlan | null> {
-  const { container, choices, fileName, vectors, sayings } = evidence;
-  const nexus = findNexusSignal(container);
-  const cube = attempt(findings, () =>
-    findCube({ container, fileName, stated: choices.data, nexus, vectors }),
-  );
-  if (cube === null) return null;
+  const { container, choices, fileName } = evidence;
+  const layout = findLayout(evidence, findings);
+  if (layout === null) return null;
+  const { cube, order, ny, nx } = layout;
   const { entry } = cube;
-  note(findings, {
-    field: 'data',
-    label: entryLabel(entry),
-    source: cube.source,
-    evidence: cube.evidence,
-    alternatives: cube.alternatives,
-  });
-  const axisNames = nexus?.entry === entry ? nexus.axes : dimensionLabels(entry);
-  const order = attempt(findings, () =>
-    findOrder({
-      entry,
-      format: container.format,
-      stated: choices.order,
-      axisNames,
-      vectors: vectors.filter(({ vector }) => vector.entry !== entry),
-      statedLength: statedAxisLength(choices.axis ?? {}, vectors),
-      heightShapes: heightEntries(container).map(({ shape }) => shape),
-    }),
-  );
-  if (order === null) return null;
-  noteOrder(findings, order, entry);
-
-  const spectral = findSpectral(evidence, findings, entry, order, axisNames);
-  const shape = spaceOf(entry, order);
-  const nameOfAxis = (letter: string): string | null =>
-    axisNames?.[order.order.indexOf(letter)] ?? null;
-  const pixel = attempt(findings, () =>
-    findPixel({
-      ...shape,
-      stated: choices.pixel,
-      vectors: vectors.filter(({ vector }) => vector.entry !== spectral?.from?.vector.entry),
-      xName: nameOfAxis('x'),
-      yName: nameOfAxis('y'),
-      sayings,
-      cubePath: entry.path,
-    }),
-  );
-  if (pixel !== null) {
-    note(findings, pixel.guess);
-    // Readers that lay scattered points side by side have said so already.
-    const isSaid = container.notes.some((one) => one.includes('scattered'));
-    findings.warnings.push(...(isSaid ? [] : pixel.warnings));
-  }
-  const height = attempt(findings, () =>
-    findHeight({
-      ...shape,
-      container,
-      companions: evidence.companions,
-      fileName,
-      stated: choices.height,
-      cubePath: entry.path,
-      isColumnsFirst: /x.*y/.test(order.order),
-    }),
-  );
-  if (height !== null) {
-    note(findings, height.guess);
-    findings.warnings.push(...height.warnings);
-  }
-  const serpentine = findSerpentine(choices.serpentine, sayings, shape.ny);
-  note(findings, serpentine.guess);
-  const exposure = attempt(findings, () => findExposure(choices.exposure_s, sayings));
-  if (exposure !== null) note(findings, exposure.guess);
+  const spectral = findSpectral(evidence, findings, layout);
+  const setting = findSetting(evidence, findings, layout, spectral?.from?.vector ?? null);
   const sample = await sampleValuesOf(container, entry, options);
   if (sample.finite === 0) {
     findings.problems.push(noData(entry, fileName, sample.looked, sample.isAll));
@@ -155,62 +88,25 @@ async function findPlan(
   const quantity = quantityOf(entry);
   const noise = attempt(findings, () => findNoise(choices.detector, sample, quantity));
   if (noise !== null) note(findings, noise.guess);
-
-  if (spectral === null || pixel === null || height === null || exposure === null || noise === null)
-    return null;
-  const meta: ScanMeta = {
-    name: fileName,
-    shape: { ...shape, nk: spectral.recorded.channels.length },
-    axis: spectral.recorded.energy,
-    x: pixel.x,
-    y: pixel.y,
-    laserEv: spectral.laserEv,
-    exposureS: exposure.exposureS,
-    noise: noise.noise,
-    quantity,
-  };
+  if (spectral === null || setting === null || noise === null) return null;
+  const { recorded, laserEv } = spectral;
+  const { pixel, height, isSerpentine, exposureS } = setting;
   return {
-    meta,
-    cube: cubePlan(entry, order, spectral.recorded, serpentine.isSerpentine),
+    meta: {
+      name: fileName,
+      shape: { ny, nx, nk: recorded.channels.length },
+      axis: recorded.energy,
+      x: pixel.x,
+      y: pixel.y,
+      laserEv,
+      exposureS,
+      noise: noise.noise,
+      quantity,
+    },
+    cube: cubePlan(entry, order, recorded, isSerpentine),
     height: height.plan,
-    resolved: resolvedChoices(choices, {
-      cube,
-      order,
-      spectral,
-      pixel,
-      height,
-      isSerpentine: serpentine.isSerpentine,
-      exposureS: exposure.exposureS,
-    }),
+    resolved: resolvedChoices(choices, { cube, order, spectral, setting }),
   };
-}
-
-function noteOrder(findings: Findings, found: FoundOrder, entry: ArrayEntry): void {
-  const { order, source, evidence, alternatives, warning } = found;
-  const words = { y: 'row', x: 'column', k: 'channel' } as const;
-  const label = [...order]
-    .map(
-      (letter, axis) =>
-        `${entry.shape[axis]} ${words[letter as 'y' | 'x' | 'k']}${entry.shape[axis] === 1 ? '' : 's'}`,
-    )
-    .join(' × ');
-  note(findings, { field: 'order', label: `${order} · ${label}`, source, evidence, alternatives });
-  if (warning !== null) findings.warnings.push(warning);
-}
-
-/** HDF5 dimension labels, where the file has them. */
-function dimensionLabels(entry: ArrayEntry): readonly string[] | null {
-  const labels = entry.attributes.DIMENSION_LABELS ?? entry.attributes.dimension_labels;
-  if (labels === undefined || typeof labels === 'string' || typeof labels === 'number') return null;
-  return labels.length === entry.shape.length ? labels.map(String) : null;
-}
-
-function spaceOf(entry: ArrayEntry, { order }: FoundOrder): { ny: number; nx: number } {
-  const length = (letter: string): number => {
-    const axis = order.indexOf(letter);
-    return axis < 0 ? 1 : entry.shape[axis];
-  };
-  return { ny: length('y'), nx: length('x') };
 }
 
 function cubePlan(

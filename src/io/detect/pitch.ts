@@ -3,6 +3,11 @@ import type { PositionAxis } from '../../science/scan';
 import type { Saying } from './sayings';
 import { nmIn } from './words';
 
+/** Positions nothing is known of: counted in pixels. */
+export function unknownAxis(label: string): PositionAxis {
+  return { label, unit: 'px', isLength: false, pitch: 1, values: null };
+}
+
 /** 0.1 µm is 100 nm, not 100.00000000000001. */
 export function roundedTo12(value: number): number {
   return Number(value.toPrecision(12));

@@ -5,9 +5,10 @@ import type { PositionAxis } from '../../science/scan';
 import type { ScanChoices } from '../scan-choices';
 import type { Guess } from '../scan-plan';
 import type { RoledVector } from './agreement';
-import { pitchOfSayings, roundedTo12 } from './pitch';
+import { pitchOfSayings, roundedTo12, unknownAxis } from './pitch';
 import { shown } from './roles';
 import type { Saying } from './sayings';
+import { scatteredPoints } from './scattered-points';
 import { nameOf, nmIn, spaced } from './words';
 
 export interface FoundPixel {
@@ -47,8 +48,10 @@ export function findPixel(question: PixelQuestion): FoundPixel {
   if (points !== null) return points;
   const said =
     xs === null && ys === null ? pitchOfSayings(question.sayings, question.cubePath) : null;
-  const x = xs?.axis ?? said?.x ?? unknownAxis('x');
-  const y = ys?.axis ?? said?.y ?? unknownAxis('y');
+  const foundX = xs?.axis ?? said?.x ?? unknownAxis('x');
+  const foundY = ys?.axis ?? said?.y ?? unknownAxis('y');
+  const x = nx === 1 ? asWideAs(foundX, foundY) : foundX;
+  const y = ny === 1 ? asWideAs(foundY, foundX) : foundY;
   const isKnown = x.unit !== 'px' || y.unit !== 'px';
   const evidence = [xs?.evidence, ys?.evidence, said?.evidence].filter((one) => one !== undefined);
   const warnings = [...(nx > 1 ? unevenness(x) : []), ...(ny > 1 ? unevenness(y) : [])];
@@ -72,8 +75,10 @@ export function findPixel(question: PixelQuestion): FoundPixel {
   };
 }
 
-function unknownAxis(label: string): PositionAxis {
-  return { label, unit: 'px', isLength: false, pitch: 1, values: null };
+/** A single row or column has no pitch of its own; it is drawn as wide as the pixels along it, where those are lengths. */
+function asWideAs(single: PositionAxis, along: PositionAxis): PositionAxis {
+  if (!along.isLength || single.unit !== 'px') return single;
+  return { ...along, label: single.label, values: null };
 }
 
 function statedPixel(
@@ -193,46 +198,6 @@ function positions({ vector, role }: RoledVector, along: 'x' | 'y'): Found | nul
   }
   const axis = { label, unit, isLength: false, pitch: roundedTo12(step), values };
   return { axis, evidence };
-}
-
-/** A line of spectra whose x and y wander is no line in space: points, kept in the file's order. */
-function scatteredPoints(question: PixelQuestion): FoundPixel | null {
-  const { nx, ny } = question;
-  if (Math.min(nx, ny) !== 1 || Math.max(nx, ny) < 2) return null;
-  const length = Math.max(nx, ny);
-  const along = (which: 'x' | 'y'): RoledVector | undefined =>
-    question.vectors.find(
-      ({ vector, role }) =>
-        vector.file === null &&
-        role.kind === 'position' &&
-        role.along === which &&
-        vector.values.length === length,
-    );
-  const x = along('x');
-  const y = along('y');
-  if (x === undefined || y === undefined) return null;
-  const point: PositionAxis = {
-    label: 'point',
-    unit: 'px',
-    isLength: false,
-    pitch: 1,
-    values: null,
-  };
-  return {
-    x: nx > 1 ? point : unknownAxis('x'),
-    y: ny > 1 ? point : unknownAxis('y'),
-    choice: undefined,
-    warnings: [
-      `The ${length} spectra lie at scattered positions (${x.vector.label}, ${y.vector.label}), not on a grid: they are shown side by side in the file’s order.`,
-    ],
-    guess: {
-      field: 'pixel',
-      label: `${length} scattered points`,
-      source: 'file',
-      evidence: `${x.vector.label} and ${y.vector.label} give a position for each spectrum`,
-      alternatives: [],
-    },
-  };
 }
 
 function unevenness(axis: PositionAxis): readonly string[] {

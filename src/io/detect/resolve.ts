@@ -1,24 +1,21 @@
 /** Everything settled, written out as a complete `scan` block. */
 import type { ScanChoices } from '../scan-choices';
 import type { FoundCube } from './cube';
-import type { FoundHeight } from './height';
 import type { FoundOrder } from './order';
-import type { FoundPixel } from './pixel';
+import type { Setting } from './setting';
 import type { Spectral } from './spectral';
 
 export interface Settled {
   readonly cube: FoundCube;
   readonly order: FoundOrder;
   readonly spectral: Spectral;
-  readonly pixel: FoundPixel;
-  readonly height: FoundHeight;
-  readonly isSerpentine: boolean;
-  readonly exposureS: number | null;
+  readonly setting: Setting;
 }
 
 /** Replaying it guesses nothing. What has no field there (a gate voltage along x) the file says itself. */
 export function resolvedChoices(choices: ScanChoices, settled: Settled): ScanChoices {
-  const { cube, order, spectral, pixel, height, isSerpentine, exposureS } = settled;
+  const { cube, order, spectral, setting } = settled;
+  const { pixel, height, isSerpentine, exposureS } = setting;
   return {
     ...(cube.entry.path === '' ? {} : { data: cube.entry.path }),
     order: order.order,

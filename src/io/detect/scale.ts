@@ -40,7 +40,7 @@ const kindWords: Readonly<Record<AxisKind, string>> = {
 
 /** @throws RimlightError 'recipe' - when a stated kind and unit do not go together */
 export function findScale(question: ScaleQuestion): ScaleAnswer {
-  const { stated, axis } = question;
+  const { stated } = question;
   const unitStated = stated.unit === undefined ? null : checkedUnit(stated.unit);
   const reading = readScale(question);
   const kind = stated.kind ?? kindOfUnit(unitStated, reading) ?? reading?.kind ?? null;
@@ -53,54 +53,54 @@ export function findScale(question: ScaleQuestion): ScaleAnswer {
       hint: `State one of: ${units.join(', ')}.`,
     });
   }
-  const isReadUnit = reading !== null && units.includes(reading.unit);
-  const unit = unitStated ?? (isReadUnit ? reading.unit : unitOfRange(kind, axis));
-  const kindSource: Source = stated.kind !== undefined ? 'stated' : sourceOf(reading, unitStated);
-  const unitEvidence =
-    unitStated !== null
-      ? 'stated by the recipe'
-      : isReadUnit
-        ? (axis.from?.vector.unit?.from ?? reading.evidence)
-        : kind === 'shift'
-          ? 'Raman shifts are in cm⁻¹'
-          : 'not stated; taken from the size of the values';
-  return {
-    found: {
-      kind,
-      unit,
-      kindGuess: {
-        field: 'kind',
-        label: kindWords[kind],
-        source: kindSource,
-        evidence:
-          kindSource === 'stated'
-            ? 'stated by the recipe'
-            : (reading?.evidence ?? `its unit is ${unit}`),
-        alternatives: otherKinds(kind, unit),
-      },
-      unitGuess: {
-        field: 'unit',
-        label: formatUnit(unit),
-        source:
-          unitStated !== null
-            ? 'stated'
-            : isReadUnit
-              ? sourceOf(reading, null)
-              : kind === 'shift'
-                ? 'file'
-                : 'guess',
-        evidence: unitEvidence,
-        alternatives: units
-          .filter((other) => other !== unit)
-          .map((other) => ({
-            label: formatUnit(other),
-            evidence: 'another unit of this kind',
-            choice: { axis: { unit: other } },
-          })),
-      },
-    },
-    problem: null,
+  const { unit, guess: unitGuess } = unitOf(question, kind, unitStated, reading);
+  const source = stated.kind !== undefined ? 'stated' : sourceOf(reading, unitStated);
+  const evidence =
+    source === 'stated' ? 'stated by the recipe' : (reading?.evidence ?? `its unit is ${unit}`);
+  const kindGuess: Guess = {
+    field: 'kind',
+    label: kindWords[kind],
+    source,
+    evidence,
+    alternatives: otherKinds(kind, unit),
   };
+  return { found: { kind, unit, kindGuess, unitGuess }, problem: null };
+}
+
+/** The unit of a kind that is settled: stated, read, or told by the size of the values. */
+function unitOf(
+  { axis }: ScaleQuestion,
+  kind: AxisKind,
+  unitStated: AxisUnit | null,
+  reading: SettledReading | null,
+): { readonly unit: AxisUnit; readonly guess: Guess } {
+  const units: readonly AxisUnit[] = axisUnits[kind];
+  const answer = (unit: AxisUnit, source: Source, evidence: string) => ({
+    unit,
+    guess: {
+      field: 'unit' as const,
+      label: formatUnit(unit),
+      source,
+      evidence,
+      alternatives: units
+        .filter((other) => other !== unit)
+        .map((other) => ({
+          label: formatUnit(other),
+          evidence: 'another unit of this kind',
+          choice: { axis: { unit: other } },
+        })),
+    },
+  });
+  if (unitStated !== null) return answer(unitStated, 'stated', 'stated by the recipe');
+  if (kind === 'shift') {
+    const evidence = axis.from?.vector.unit?.from ?? 'Raman shifts are in cm⁻¹';
+    return answer('cm-1', 'file', evidence);
+  }
+  if (reading !== null && units.includes(reading.unit)) {
+    const evidence = axis.from?.vector.unit?.from ?? reading.evidence;
+    return answer(reading.unit, sourceOf(reading, null), evidence);
+  }
+  return answer(unitOfRange(kind, axis), 'guess', 'not stated; taken from the size of the values');
 }
 
 function sourceOf(reading: ScaleReading | null, unitStated: AxisUnit | null): Source {

@@ -1,9 +1,9 @@
 import { describe, expect, it } from 'vitest';
-import { detectScan } from '../../src/io/detect/detect-scan';
-import type { ScanChoices } from '../../src/io/scan-choices';
-import type { Companion, Guess, GuessField, Inspection } from '../../src/io/scan-plan';
-import { cm1FromEv, nmFromEv } from '../../src/science/units';
-import { type FakeFile, fakeContainer, numbered, ramp } from './fake-container';
+import { detectScan } from '../../../src/io/detect/detect-scan';
+import type { ScanChoices } from '../../../src/io/scan-choices';
+import type { Companion, Guess, GuessField, Inspection } from '../../../src/io/scan-plan';
+import { cm1FromEv, nmFromEv } from '../../../src/science/units';
+import { type FakeFile, fakeContainer, numbered, ramp } from '../fake-container';
 
 const inspect = (
   file: FakeFile,

@@ -1,10 +1,10 @@
 /** Whatever a file holds, looking at it ends in a plan or in a sentence. */
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { isRimlightError } from '../../src/errors';
-import { detectScan } from '../../src/io/detect/detect-scan';
-import type { ScanChoices } from '../../src/io/scan-choices';
-import { type FakeArray, fakeContainer } from './fake-container';
+import { isRimlightError } from '../../../src/errors';
+import { detectScan } from '../../../src/io/detect/detect-scan';
+import type { ScanChoices } from '../../../src/io/scan-choices';
+import { type FakeArray, fakeContainer } from '../fake-container';
 
 const names = [
   ...[

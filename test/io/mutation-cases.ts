@@ -5,6 +5,7 @@ import { npzReader } from '../../src/io/npz';
 import { tiffReader } from '../../src/io/tiff';
 import type { ReaderCase } from './check-reader';
 import { fixtureBytes } from './fixtures';
+import { textSamples } from './text-samples';
 
 const from = (reader: ReaderCase['reader'], ...paths: readonly string[]): readonly ReaderCase[] =>
   paths.map((name) => ({ name, bytes: fixtureBytes(name), reader }));
@@ -36,4 +37,5 @@ export const mutationCases: readonly ReaderCase[] = [
     'tiff/pillow-packbits-8.tif',
     'tiff/described.tif',
   ),
+  ...textSamples,
 ];

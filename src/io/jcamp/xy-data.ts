@@ -39,15 +39,10 @@ export function readXyData(block: JcampBlock, table: JcampRecord, fileName: stri
   if (count === 0) throw noPoints(table, fileName);
   refuseCutOff(block, count, fileName);
   const grid = gridOf(block, count, starts, fileName);
-  const isUnscaled = refuseStrayLines(block, starts, grid, fileName);
-  if (isUnscaled)
+  const note = noteOnCount(block, count, starts, grid, fileName);
+  if (note !== null) notes.push(note);
+  if (areUnscaled(block, starts, grid, fileName)) {
     notes.push('The abscissae in the table are not divided by XFACTOR, as they should be.');
-  const promised = numberOf(block, 'NPOINTS');
-  if (promised !== null && promised !== count) {
-    if (starts.length < 2) throw wrongCount(promised, count, fileName);
-    notes.push(
-      `##NPOINTS= says ${promised}, and the table has ${count} points, with which the abscissa of every line agrees.`,
-    );
   }
   const factor = numberOf(block, 'YFACTOR') ?? 1;
   const y = Float64Array.from(values, (value) => value * factor);
@@ -132,32 +127,71 @@ function lastFrom(
   return first + ((to.abscissa - from.abscissa) * factor * (count - 1)) / (to.point - from.point);
 }
 
+/** Where NPOINTS and the table differ, the lines must tell that NPOINTS is wrong, and not the table. */
+function noteOnCount(
+  block: JcampBlock,
+  count: number,
+  starts: readonly LineStart[],
+  grid: XGrid,
+  fileName: string,
+): string | null {
+  const promised = numberOf(block, 'NPOINTS');
+  if (promised === null || promised === count) return null;
+  const factor = numberOf(block, 'XFACTOR') ?? 1;
+  const agree = (step: number): boolean =>
+    strayLine(starts, { ...grid, step }, factor, { digits: 0.51, steps: 0.05 }) === undefined;
+  const asPromised = agree((grid.last - grid.first) / (promised - 1));
+  if (!asPromised && agree(grid.step)) {
+    return `##NPOINTS= says ${promised}, and the table has ${count} points, with which the abscissa of every line agrees.`;
+  }
+  throw scanError(
+    `##NPOINTS= says ${promised}, and the table has ${count} points`,
+    fileName,
+    'Values are missing, or too many: export the file again.',
+  );
+}
+
 /**
  * Each line must begin where its first point lies, to the digits written.
  *
  * @returns true where the abscissae agree only without XFACTOR, a slip of some programs
  */
-function refuseStrayLines(
+function areUnscaled(
   block: JcampBlock,
   starts: readonly LineStart[],
   grid: XGrid,
   fileName: string,
 ): boolean {
   const factor = numberOf(block, 'XFACTOR') ?? 1;
-  const strayOf = (scale: number): LineStart | undefined =>
-    starts.find(({ point, abscissa, resolution }) => {
-      const slack = resolution * Math.abs(scale) + 0.25 * Math.abs(grid.step);
-      return Math.abs(abscissa * scale - (grid.first + point * grid.step)) > slack;
-    });
-  const stray = strayOf(factor);
+  // Some programs cut the last digit off instead of rounding it.
+  const slack = { digits: 1, steps: 0.25 };
+  const stray = strayLine(starts, grid, factor, slack);
   if (stray === undefined) return false;
-  if (factor !== 1 && strayOf(1) === undefined) return true;
+  if (factor !== 1 && strayLine(starts, grid, 1, slack) === undefined) return true;
   const { point, abscissa, number } = stray;
   const expected = Number((grid.first + point * grid.step).toPrecision(8));
   throw scanError(
     `the line begins at ${Number((abscissa * factor).toPrecision(8))}, and its first value is point ${point + 1}, which lies at ${expected}: values are missing or too many before it, or FIRSTX, LASTX and NPOINTS are wrong`,
     `${fileName}: line ${number}`,
   );
+}
+
+/** How far a line may begin from its point: units of the last digit written, and steps. */
+interface Slack {
+  readonly digits: number;
+  readonly steps: number;
+}
+
+function strayLine(
+  starts: readonly LineStart[],
+  { first, step }: XGrid,
+  factor: number,
+  { digits, steps }: Slack,
+): LineStart | undefined {
+  return starts.find(({ point, abscissa, resolution }) => {
+    const slack = digits * resolution * Math.abs(factor) + steps * Math.abs(step);
+    return Math.abs(abscissa * factor - (first + point * step)) > slack;
+  });
 }
 
 /** A block without ##END= whose table is short was cut off. */
@@ -173,10 +207,6 @@ export function refuseCutOff(block: JcampBlock, count: number, fileName: string)
 
 export function noPoints(table: JcampRecord, fileName: string) {
   return scanError('the table holds no points', `${fileName}: line ${table.number}`);
-}
-
-function wrongCount(promised: number, count: number, fileName: string) {
-  return scanError(`##NPOINTS= says ${promised}, and the table has ${count} points`, fileName);
 }
 
 function noteOnFirstY(block: JcampBlock, first: number, factor: number): readonly string[] {

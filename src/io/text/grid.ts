@@ -26,18 +26,20 @@ const fewestWanderingPoints = 9;
  */
 export function findGrid(x: Float64Array, y: Float64Array): Grid | null {
   const exact = placed(x, y, distinct(x), distinct(y));
-  if (exact !== null) {
-    const points = x.length;
-    const isFilled = points > leastFill * exact.x.length * exact.y.length;
-    return exact.missing === 0 || (isFilled && points >= fewestPoints) ? exact : null;
-  }
+  if (exact?.missing === 0) return exact;
+  const near = wandering(x, y);
+  if (near !== null && (exact === null || near.missing < exact.missing)) return near;
+  const isFilled = exact !== null && x.length > leastFill * exact.x.length * exact.y.length;
+  return isFilled && x.length >= fewestPoints ? exact : null;
+}
+
+function wandering(x: Float64Array, y: Float64Array): Grid | null {
   if (x.length < fewestWanderingPoints) return null;
   const columns = clusters(x);
   const rows = clusters(y);
-  if (columns === null || rows === null) return null;
-  const near = placed(x, y, columns, rows);
-  const isFull = near !== null && x.length >= leastFillOfWandering * columns.length * rows.length;
-  return isFull ? near : null;
+  const near = columns === null || rows === null ? null : placed(x, y, columns, rows);
+  if (near === null) return null;
+  return x.length >= leastFillOfWandering * near.x.length * near.y.length ? near : null;
 }
 
 function distinct(values: Float64Array): Float64Array {
@@ -93,24 +95,19 @@ function clusters(values: Float64Array): Float64Array | null {
   );
   const widest = gaps.toSorted().reverse();
   if (widest[0] === 0) return sorted.subarray(0, 1);
-  let split = -1;
-  let best = gapRatio;
-  for (let i = 0; i + 1 < widest.length; i++) {
-    const ratio = widest[i] / widest[i + 1];
-    if (ratio > best) {
-      best = ratio;
-      split = i;
-    }
-    if (widest[i + 1] === 0) break;
-  }
+  // The first great fall in width parts columns from wandering; a later one, to nothing, is rounding.
+  const split = widest.findIndex((gap, i) => gap > gapRatio * (widest[i + 1] ?? gap));
   if (split < 0) return null;
   const means: number[] = [];
   let from = 0;
   for (let i = 0; i < sorted.length; i++) {
     if (i < gaps.length && gaps[i] < widest[split]) continue;
     const group = sorted.subarray(from, i + 1);
-    if (group[group.length - 1] - group[0] > widest[split] / 2) return null;
-    means.push(group.reduce((sum, value) => sum + value, 0) / group.length);
+    const [first] = group;
+    const spread = group[group.length - 1] - first;
+    if (spread > widest[split] / 2) return null;
+    // Counted from the first, equal values have exactly themselves for a mean.
+    means.push(first + group.reduce((sum, value) => sum + (value - first), 0) / group.length);
     from = i + 1;
   }
   return Float64Array.from(means);

@@ -2,7 +2,7 @@
 import type { PositionAxis } from '../../science/scan';
 import type { RoledVector } from './agreement';
 import { unknownAxis } from './pitch';
-import type { FoundPixel, PixelQuestion } from './pixel';
+import type { FoundPixel, PixelQuestion } from './pixel-question';
 
 /** A line of spectra whose x and y wander is no line in space: points, kept in the file's order. */
 export function scatteredPoints(question: PixelQuestion): FoundPixel | null {

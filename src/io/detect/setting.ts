@@ -4,7 +4,8 @@ import { findExposure, findSerpentine } from './exposure';
 import { attempt, type Evidence, type Findings, note } from './findings';
 import { type FoundHeight, findHeight } from './height';
 import type { Layout } from './layout';
-import { type FoundPixel, findPixel } from './pixel';
+import { findPixel } from './pixel';
+import type { FoundPixel } from './pixel-question';
 import type { Vector } from './vectors';
 
 export interface Setting {

@@ -84,7 +84,8 @@ export interface WorkerEngine {
   ): Promise<SlabSummary>;
   /** The whole height map of the scan, nm, shifted as the plan says; not a slab. */
   height(callId: number, inputs: ScanInputs, plan: ScanPlan): Promise<PixelMap>;
-  bandMaps(scanId: number, request: BandRequest): Promise<readonly BandMap[]>;
+  /** @param withErrors - false where counts turned out not to be counts, so that there is no noise model */
+  bandMaps(scanId: number, request: BandRequest, withErrors: boolean): Promise<readonly BandMap[]>;
   /** (nk) counts of one pixel of this worker's rows. */
   spectrum(scanId: number, pixel: Pixel): Promise<Float64Array>;
   /** Per-row sums over the pixels of `mask` (rows × nx, 1 = take), and how many, as in SlabSummary. */
@@ -113,6 +114,8 @@ export interface ScanOverview {
   readonly minCounts: number;
   readonly maxCounts: number;
   readonly noDataValues: number;
+  /** what only the whole cube could tell, one sentence each */
+  readonly warnings: readonly string[];
 }
 
 /** One open scan, spread over the pool's workers. */

@@ -56,9 +56,13 @@ function positionText({ label, unit, isLength, pitch, values }: PositionAxis): s
   return label === 'x' || label === 'y' ? `step ${step}` : `${label}: step ${step}${span}`;
 }
 
-const sourceWords: Readonly<Record<Guess['source'], string>> = {
-  stated: 'the recipe says so',
-  file: 'the file says so',
+/** Where a thing was found, then why; the evidence of what is stated says that by itself. */
+function evidenceText(source: Guess['source'], evidence: string): string {
+  return source === 'stated' ? evidence : `${sourceWords[source]}: ${evidence}`;
+}
+
+const sourceWords: Readonly<Record<Exclude<Guess['source'], 'stated'>, string>> = {
+  file: 'from the file',
   guess: 'guessed',
   missing: 'MISSING',
   absent: 'none',
@@ -67,7 +71,7 @@ const sourceWords: Readonly<Record<Guess['source'], string>> = {
 function guessLines({ field, label, source, evidence, alternatives }: Guess): readonly string[] {
   return [
     row(field, label),
-    row('', `${sourceWords[source]}: ${evidence}`),
+    row('', evidenceText(source, evidence)),
     ...alternatives.map((other) => row('', `or ${other.label}: ${other.evidence}`)),
   ];
 }

@@ -1,7 +1,7 @@
 /** `rimlight inspect`: what a scan file holds, what was guessed and why. */
+import { createNodeEngine } from '../../workers/node-engine';
 import type { RunCommand } from './command';
 import { countStatistics } from './count-statistics';
-import { startEngine } from './engine';
 import { done } from './exit-codes';
 import { inspectionRecord } from './inspect-json';
 import { inspectionText } from './inspect-text';
@@ -17,7 +17,7 @@ export const runInspect: RunCommand = async ({ operands, options }, context) => 
     await findScan(scanPath),
     recipe === null ? [] : await findCompanions(recipe),
   );
-  const engine = await startEngine();
+  const engine = createNodeEngine();
   try {
     const choices = recipe?.recipe.scan ?? {};
     const inspection = await engine.inspect(inputs, choices, { signal: context.signal });

@@ -7,7 +7,8 @@ export interface MapsFile {
   readonly maps: readonly DerivedMap[];
   /** the recipe's own text */
   readonly recipeText: string;
-  readonly scanSha256: string;
+  /** of the scan file */
+  readonly sha256: string;
   readonly version: string;
 }
 
@@ -17,7 +18,7 @@ export interface MapsFile {
  *
  * @see NeXus definitions, NXdata: `signal`, `axes`, FIELDNAME_errors
  */
-export function mapsTree({ meta, maps, recipeText, scanSha256, version }: MapsFile): Hdf5Group {
+export function mapsTree({ meta, maps, recipeText, sha256, version }: MapsFile): Hdf5Group {
   const [first] = maps;
   return group(
     { NX_class: 'NXroot', default: 'entry', creator: 'Rimlight', creator_version: version },
@@ -37,7 +38,7 @@ export function mapsTree({ meta, maps, recipeText, scanSha256, version }: MapsFi
             { NX_class: 'NXnote' },
             {
               file_name: dataset(meta.name),
-              sha256: dataset(scanSha256),
+              sha256: dataset(sha256),
             },
           ),
         },

@@ -1,23 +1,16 @@
 /** `rimlight run`: replays a recipe on one scan or many. */
-import type { ScanEngine } from '../../workers/engine';
-import { ensureRimlightError, throwIfAborted } from '../errors';
+
+import { basename } from 'node:path';
+import { inspect } from 'node:util';
+import { createNodeEngine } from '../../workers/node-engine';
+import { ensureRimlightError, RimlightError, throwIfAborted } from '../errors';
 import { assertExecutable } from '../recipe/executable';
-import type { Context, RunCommand } from './command';
-import { startEngine } from './engine';
+import type { RunCommand } from './command';
 import { errorLine } from './error-line';
 import { done, someFailed } from './exit-codes';
-import { type FoundFile, findCompanions, type RecipeFile, readRecipeFile } from './recipe-file';
-import { parseRunRequest, type RunRequest, type ScanTask } from './run-request';
-import { runScan } from './run-scan';
-
-/** What all scans of a call share. */
-export interface RunTools {
-  readonly request: RunRequest;
-  readonly recipeFile: RecipeFile;
-  readonly companions: readonly FoundFile[];
-  readonly engine: ScanEngine;
-  readonly context: Context;
-}
+import { findCompanions, readRecipeFile } from './recipe-file';
+import { parseRunRequest, type ScanTask } from './run-request';
+import { type RunTools, runScan } from './run-scan';
 
 /** With several scans, one that fails is told and the others are done. */
 export const runRun: RunCommand = async (call, context) => {
@@ -25,21 +18,20 @@ export const runRun: RunCommand = async (call, context) => {
   const recipeFile = await readRecipeFile(request.recipePath);
   assertExecutable(recipeFile.recipe);
   const companions = await findCompanions(recipeFile);
-  const engine = await startEngine(request.workers);
-  engine.onWorkerReplaced(({ worker, reason }) => {
-    context.say(
-      `rimlight: worker ${worker + 1} stopped (${reason}) and was replaced; its rows are read again.`,
-    );
-  });
+  const engine = createNodeEngine(request.workers === null ? {} : { workerCount: request.workers });
   try {
     const tools = { request, recipeFile, companions, engine, context };
-    return await runAll(request.tasks, tools);
+    return await runAll(request.tasks, tools, call.options.has('debug'));
   } finally {
     await engine.close();
   }
 };
 
-async function runAll(tasks: readonly ScanTask[], tools: RunTools): Promise<number> {
+async function runAll(
+  tasks: readonly ScanTask[],
+  tools: RunTools,
+  isDebug: boolean,
+): Promise<number> {
   const { context } = tools;
   let failed = 0;
   for (const task of tasks) {
@@ -49,11 +41,20 @@ async function runAll(tasks: readonly ScanTask[], tools: RunTools): Promise<numb
       if (tasks.length === 1) throw error;
       // Stopped by the user: the other scans are not wanted either.
       throwIfAborted(context.signal, 'the run');
-      context.say(errorLine(ensureRimlightError(error)));
+      context.say(errorLine(ofScan(ensureRimlightError(error), task.scanPath)));
+      if (isDebug) context.say(inspect(error));
       failed++;
     }
   }
   if (failed === 0) return done;
   context.say(`rimlight: ${failed} of ${tasks.length} scans failed; the others are done.`);
   return someFailed;
+}
+
+/** Among several scans an error says which one it is of. */
+function ofScan(error: RimlightError, scanPath: string): RimlightError {
+  const { kind, what, where, hint } = error;
+  if (where.includes(basename(scanPath))) return error;
+  const place = where === '' ? scanPath : `${scanPath}: ${where}`;
+  return new RimlightError(kind, { what, where: place, hint }, { cause: error });
 }

@@ -133,6 +133,29 @@ describe('a wrong call', () => {
   });
 });
 
+describe('a wrong call of run', () => {
+  it.each([
+    [['--out', 'o', 'a.h5'], '--recipe is missing'],
+    [['--recipe', 'r.json', 'a.h5'], '--out is missing'],
+    [['--recipe', 'r.json', '--out', 'o'], 'the scan file is missing'],
+    [['--recipe', 'r.json', '--out', 'o', '--workers', '0', 'a.h5'], '--workers is "0"'],
+    [
+      ['--recipe', 'r.json', '--out', 'o', '--only', 'mapps', 'a.h5'],
+      'there is no part "mapps" to write',
+    ],
+    [
+      ['--recipe', 'r.json', '--out', 'o', '--only', 'maps,fit', 'a.h5'],
+      'this build cannot make "fit" yet',
+    ],
+    [['--recipe', 'r.json', '--out', 'o', 'a.h5', 'a.h5'], 'a.h5 is given twice'],
+    [['--recipe', 'nowhere.json', '--out', 'o', 'a.h5'], 'the recipe cannot be read'],
+  ])('%j ends with 2 before anything is read', async (words, what) => {
+    const { code, out, err } = await call('run', ...words);
+    expect([code, out, err.length]).toEqual([2, [], 1]);
+    expect(err[0]).toContain(`rimlight: ${what}`);
+  });
+});
+
 describe('exit codes', () => {
   it('are those of the contract', () => {
     expect(['fault', 'usage', 'recipe', 'scan'].map((kind) => exitCodeOf(kind as 'fault'))).toEqual(

@@ -1,5 +1,5 @@
 /// <reference types="vitest/config" />
-import { mkdirSync, writeFileSync } from 'node:fs';
+import { existsSync, mkdirSync, statSync, writeFileSync } from 'node:fs';
 import { fileURLToPath } from 'node:url';
 import react from '@vitejs/plugin-react';
 import { defineConfig, type Plugin, runnerImport } from 'vite';
@@ -12,18 +12,23 @@ const isolation = {
   'Cross-Origin-Embedder-Policy': 'require-corp',
 };
 
+/** A module of ours, compiled on the way: this file itself may import packages only. */
+async function importSource<T>(path: string): Promise<T> {
+  const { module } = await runnerImport<T>(fromRoot(path), { configFile: false, logLevel: 'warn' });
+  return module;
+}
+
 /** Writes the recipe's JSON Schema into public/ before it is served or copied; the schema is code, the file is not kept. */
 function recipeSchemaFile(): Plugin {
   return {
     name: 'recipe-schema-file',
     apply: (_, { command }) => command === 'build' || process.env.VITEST === undefined,
     async buildStart() {
-      const { module } = await runnerImport<typeof import('./src/recipe/json-schema')>(
-        fromRoot('src/recipe/json-schema.ts'),
-        { configFile: false, logLevel: 'warn' },
+      const { recipeJsonSchema } = await importSource<typeof import('./src/recipe/json-schema')>(
+        'src/recipe/json-schema.ts',
       );
       mkdirSync(fromRoot('public'), { recursive: true });
-      const text = `${JSON.stringify(module.recipeJsonSchema(), null, 2)}\n`;
+      const text = `${JSON.stringify(recipeJsonSchema(), null, 2)}\n`;
       writeFileSync(fromRoot('public/recipe.schema.json'), text);
     },
   };
@@ -36,6 +41,26 @@ function recipeSchemaFile(): Plugin {
 const resolve = {
   alias: { 'h5wasm/factory': fromRoot('node_modules/h5wasm/dist/esm/hdf5_util.js') },
 };
+
+/** What the page of `npm run dev` opens at once, as `rimlight serve` tells it. */
+function demoOffer(): Plugin {
+  return {
+    name: 'demo-offer',
+    apply: 'serve',
+    async configureServer({ middlewares }) {
+      const { manifestAddress, offerDemo } =
+        await importSource<typeof import('./src/cli/server/offer')>('src/cli/server/offer.ts');
+      middlewares.use(manifestAddress, async (_request, response) => {
+        const { manifest } = await offerDemo(async (address) => {
+          const path = fromRoot(address.slice(1));
+          return existsSync(path) ? statSync(path).size : null;
+        });
+        response.setHeader('Content-Type', 'application/json; charset=utf-8');
+        response.end(JSON.stringify(manifest));
+      });
+    },
+  };
+}
 
 /** `--mode cli` builds the command line and its worker for Node, `--mode bench` the measurements; otherwise the app. */
 export default defineConfig(({ mode }) => {
@@ -62,7 +87,7 @@ export default defineConfig(({ mode }) => {
   }
   return {
     resolve,
-    plugins: [react(), recipeSchemaFile()],
+    plugins: [react(), recipeSchemaFile(), demoOffer()],
     base: './',
     worker: { format: 'es' as const },
     server: { headers: isolation },

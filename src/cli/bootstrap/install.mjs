@@ -1,9 +1,9 @@
 /**
- * Installs the dependencies when they are missing or older than the lock file. Plain JavaScript
+ * Installs the dependencies where they are missing or not those of the lock file. Plain JavaScript
  * without dependencies: it runs before there is anything to compile with.
  */
 import { spawnSync } from 'node:child_process';
-import { existsSync, readFileSync, statSync } from 'node:fs';
+import { existsSync, lstatSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 
@@ -35,15 +35,30 @@ export function ensureInstalled() {
   return false;
 }
 
-/** npm writes the hidden lock file last, so a broken-off installation has none. */
+/**
+ * Whether every package of the lock file is there in its version. npm writes its list of what is
+ * installed last, so a broken-off installation has none. A linked folder is somebody else's: `npm ci`
+ * would empty it, so it is taken as it is.
+ */
 function isInstalled() {
-  const installed = join(projectFolder, 'node_modules', '.package-lock.json');
-  const wanted = join(projectFolder, 'package-lock.json');
-  return existsSync(installed) && statSync(installed).mtimeMs >= statSync(wanted).mtimeMs;
+  const folder = join(projectFolder, 'node_modules');
+  if (lstatSync(folder, { throwIfNoEntry: false })?.isSymbolicLink()) return true;
+  const list = join(folder, '.package-lock.json');
+  if (!existsSync(list)) return false;
+  const installed = readJson(list).packages;
+  const wanted = Object.entries(readJson(join(projectFolder, 'package-lock.json')).packages);
+  return wanted.every(([place, { version, optional }]) => {
+    const isRoot = place === '';
+    return isRoot || (installed[place] ? installed[place].version === version : optional === true);
+  });
+}
+
+function readJson(path) {
+  return JSON.parse(readFileSync(path, 'utf8'));
 }
 
 function isNodeNewEnough() {
-  const { engines } = JSON.parse(readFileSync(join(projectFolder, 'package.json'), 'utf8'));
+  const { engines } = readJson(join(projectFolder, 'package.json'));
   const [, ...least] = /(\d+)\.(\d+)/.exec(engines.node).map(Number);
   const [major, minor] = process.versions.node.split('.').map(Number);
   if (major > least[0] || (major === least[0] && minor >= least[1])) return true;

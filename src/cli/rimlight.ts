@@ -43,7 +43,7 @@ clearProgressLine();
 
 function writeProgressLine(text: string): void {
   clearProgressLine();
-  process.stderr.write(text.slice(0, Math.max(20, process.stderr.columns - 1)));
+  process.stderr.write(text.slice(0, (process.stderr.columns || 80) - 1));
   hasProgressLine = true;
 }
 

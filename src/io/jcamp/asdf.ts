@@ -39,7 +39,8 @@ export function readOrdinateLine(text: string, where: string): OrdinateLine {
   let difference: number | null = null;
   let endsInDifference = false;
   ordinateForm.lastIndex = abscissaForm.lastIndex;
-  while (ordinateForm.lastIndex < text.trimEnd().length) {
+  const end = text.trimEnd().length;
+  while (ordinateForm.lastIndex < end) {
     const from = ordinateForm.lastIndex;
     const match = ordinateForm.exec(text);
     if (match === null) throw unreadable(text.slice(from), where);

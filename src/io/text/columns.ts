@@ -85,13 +85,14 @@ async function columnsOf(
 }
 
 /**
- * Columns without names are a spectrum when the first runs one way and some other does not; a tilted
- * surface may run one way in all of them.
+ * Columns without names are a spectrum when the first runs one way (of three, the second may) and some
+ * other does not; a tilted surface may run one way in all of them.
  */
 function isSpectrum(columns: readonly GrowingColumn[]): boolean {
   const isRamp = ({ values }: GrowingColumn): boolean =>
     runsOneWay([...values.filter((value) => !Number.isNaN(value))]);
-  return isRamp(columns[0]) && !columns.every(isRamp);
+  const axes = columns.slice(0, columns.length === 3 ? 2 : 1);
+  return axes.some(isRamp) && !columns.every(isRamp);
 }
 
 function spectrumOf(

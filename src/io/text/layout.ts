@@ -86,6 +86,14 @@ function namelessLayout(table: Table, columns: readonly number[]): Layout {
     const [x, y, channel, value] = columns;
     return { kind: 'long', labels: [], position: { x, y }, channel, values: [value] };
   }
+  if (columns.length === 3 && isLong(table, [columns[0]], columns[1])) {
+    const [label, channel, value] = columns;
+    const first = table.sample[0][label];
+    // One place all along may as well be a column that says the same in every row of a spectrum.
+    if (table.sample.some((cells) => cells[label] !== first)) {
+      return { kind: 'long', labels: [label], position: null, channel, values: [value] };
+    }
+  }
   if (columns.length > mostNamelessColumns) return { kind: 'matrix', columns };
   return { kind: 'columns', columns, mayBeMatrix: columns.length >= 3 };
 }

@@ -109,16 +109,13 @@ function cubeOf(
   const stretches = read.stretches.map((stretch) => inPixels(stretch, grid));
   const entry = { path, shape, type, attributes };
   const { table, layout } = scan;
-  return new StreamedCube(entry, async (from, to, out, options) => {
-    for (const stretch of stretches) {
-      if (stretch.highest < from || stretch.lowest >= to) continue;
-      for await (const rows of longRowsOf(table, layout, read, stretch, options)) {
-        for (const { point, channel, cells, line } of rows) {
-          const pixel = grid === null ? point : grid.pixelOf[point];
-          if (pixel < from || pixel >= to) continue;
-          const value = numberAt(cells, layout.values[column], table, line);
-          out[(pixel - from) * nk + channel] = value;
-        }
+  return new StreamedCube(entry, stretches, async (stretch, { from, to, values }, options) => {
+    for await (const rows of longRowsOf(table, layout, read, stretch, options)) {
+      for (const { point, channel, cells, line } of rows) {
+        const pixel = grid === null ? point : grid.pixelOf[point];
+        if (pixel < from || pixel >= to) continue;
+        const value = numberAt(cells, layout.values[column], table, line);
+        values[(pixel - from) * nk + channel] = value;
       }
     }
   });

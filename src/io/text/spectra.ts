@@ -167,20 +167,18 @@ function cubeOf(
   }
   const stretches = read.stretches.map((stretch) => inPixels(stretch, grid));
   const entry = { path, shape, type, attributes };
-  return new StreamedCube(entry, async (from, to, out, options) => {
-    for (const stretch of stretches) {
-      if (stretch.highest < from || stretch.lowest >= to) continue;
-      let row = stretch.row;
-      for await (const batch of rowsOf(table, stretch, options)) {
-        batch.rows.forEach((cells, i) => {
-          const pixel = grid === null ? row : grid.pixelOf[row];
-          row++;
-          if (pixel < from || pixel >= to) return;
-          const at = (pixel - from) * nk;
-          for (let k = 0; k < nk; k++)
-            out[at + k] = numberAt(cells, columns[k], table, batch.lines[i]);
-        });
-      }
+  return new StreamedCube(entry, stretches, async (stretch, { from, to, values }, options) => {
+    let row = stretch.row;
+    for await (const batch of rowsOf(table, stretch, options)) {
+      batch.rows.forEach((cells, i) => {
+        const pixel = grid === null ? row : grid.pixelOf[row];
+        row++;
+        if (pixel < from || pixel >= to) return;
+        const at = (pixel - from) * nk;
+        for (let k = 0; k < nk; k++) {
+          values[at + k] = numberAt(cells, columns[k], table, batch.lines[i]);
+        }
+      });
     }
   });
 }

@@ -16,32 +16,33 @@ export interface PixelStretch extends Stretch {
   readonly row: number;
 }
 
-/** Writes the values of pixels from ≤ pixel < to into (to − from, nk); what the file does not have stays. */
-export type FillPixels = (
-  from: number,
-  to: number,
-  out: CountsArray,
+/** Pixels from ≤ pixel < to, (to − from, nk). */
+export interface PixelBand {
+  readonly from: number;
+  readonly to: number;
+  readonly values: CountsArray;
+}
+
+/** Writes the values of a stretch that belong to the band into it; what the file does not have stays. */
+export type ReadStretch = (
+  stretch: PixelStretch,
+  band: PixelBand,
   options: ReadOptions,
 ) => Promise<void>;
 
 /** Cubes up to this are held as a whole, and as much of larger ones. */
 export const heldBytes = 64 << 20;
 
-interface Band {
-  readonly from: number;
-  readonly to: number;
-  readonly values: CountsArray;
-}
-
 export class StreamedCube {
-  private band: Band | null = null;
+  private band: PixelBand | null = null;
   private readonly nk: number;
   private readonly pixels: number;
 
   /** @param entry - its last axis is the channels, those before are pixels */
   constructor(
     readonly entry: ArrayEntry,
-    private readonly fill: FillPixels,
+    private readonly stretches: readonly PixelStretch[],
+    private readonly readStretch: ReadStretch,
   ) {
     const { shape } = entry;
     this.nk = shape[shape.length - 1];
@@ -69,20 +70,44 @@ export class StreamedCube {
     return out;
   }
 
-  private async bandOf(from: number, to: number, options: ReadOptions): Promise<Band> {
+  private async bandOf(from: number, to: number, options: ReadOptions): Promise<PixelBand> {
     const held = this.band;
     if (held !== null && from >= held.from && to <= held.to) return held;
     // Let go of it first: two bands at once would be twice the memory.
     this.band = null;
     const { type } = this.entry;
-    const room = Math.floor(heldBytes / (this.nk * bytesOfType[type]));
-    const end = Math.min(this.pixels, Math.max(to, from + room));
+    const end = this.endOfBand(from, to);
     const values = new arrayOfType[type]((end - from) * this.nk);
     if (type === 'float64') values.fill(Number.NaN);
-    await this.fill(from, end, values, options);
     const band = { from, to: end, values };
+    await this.fill(band, options);
     this.band = band;
     return band;
+  }
+
+  /**
+   * The pixels after the last one asked for whose rows are read anyway: few where the file goes through
+   * the scan in order, as many as can be held where every part of it has pixels from all over.
+   */
+  private endOfBand(from: number, to: number): number {
+    const room = Math.floor(heldBytes / (this.nk * bytesOfType[this.entry.type]));
+    const highest = this.stretches.reduce(
+      (most, stretch) =>
+        stretch.lowest < to && stretch.highest >= from ? Math.max(most, stretch.highest) : most,
+      to - 1,
+    );
+    return Math.max(to, Math.min(this.pixels, highest + 1, from + room));
+  }
+
+  private async fill(band: PixelBand, { signal, onProgress }: ReadOptions): Promise<void> {
+    const quiet: ReadOptions = signal === undefined ? {} : { signal };
+    const needed = this.stretches.filter(
+      ({ lowest, highest }) => highest >= band.from && lowest < band.to,
+    );
+    for (const [done, stretch] of needed.entries()) {
+      await this.readStretch(stretch, band, quiet);
+      onProgress?.((done + 1) / needed.length);
+    }
   }
 }
 

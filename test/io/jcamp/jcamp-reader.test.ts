@@ -1,57 +1,7 @@
-/** JCAMP-DX files: headers, checks, pairs, links, refusals. */
+/** JCAMP-DX files: headers, pairs, links. */
 import { describe, expect, it } from 'vitest';
-import { errorSentence } from '../../../src/errors';
-import { memorySource } from '../../../src/io/byte-source';
-import type { Container } from '../../../src/io/container';
 import { jcampReader } from '../../../src/io/jcamp/jcamp-reader';
-import { expectScanError, outcomeOf } from '../check-reader';
-import { spySource } from '../spy-source';
-
-const open = (lines: readonly string[], end = '\r\n'): Promise<Container> =>
-  jcampReader.open(memorySource('a.jdx', new TextEncoder().encode(lines.join(end) + end)));
-
-async function values(file: Container, path: string): Promise<number[]> {
-  const entry = file.entries.find((one) => one.path === path);
-  if (entry === undefined) throw new Error(`no ${path}`);
-  return Array.from(await file.read(path, [0], entry.shape));
-}
-
-async function refusal(lines: readonly string[]) {
-  const { error } = await outcomeOf(() => open(lines));
-  expectScanError(error);
-  expect(error.hint).toMatch(/^[A-Z].*\.$/);
-  return error;
-}
-
-type Header = Readonly<Record<string, string | number | null>>;
-
-/** A file of four points, 1, 2, 3, 4 at 100, 102, 104, 106, with some labels changed (null: taken out). */
-function fileOf(
-  changes: Header = {},
-  table: readonly string[] = ['100 1 2', '104 3 4'],
-  form = '##XYDATA= (X++(Y..Y))',
-): string[] {
-  const labels: Header = {
-    TITLE: 'four points',
-    'JCAMP-DX': '4.24',
-    'DATA TYPE': 'INFRARED SPECTRUM',
-    ORIGIN: 'test',
-    OWNER: 'public domain',
-    XUNITS: '1/CM',
-    YUNITS: 'ABSORBANCE',
-    XFACTOR: 1,
-    YFACTOR: 1,
-    FIRSTX: 100,
-    LASTX: 106,
-    NPOINTS: 4,
-    FIRSTY: 1,
-    ...changes,
-  };
-  const header = Object.entries(labels)
-    .filter(([, value]) => value !== null)
-    .map(([label, value]) => `##${label}= ${value}`);
-  return [...header, form, ...table, '##END='];
-}
+import { fileOf, open, refusal, values } from './four-points';
 
 describe('a spectrum', () => {
   it('has x and y with their units, and what its labels state', async () => {
@@ -235,79 +185,6 @@ describe('linked blocks', () => {
     const file = await open(link(peaks, fileOf()));
     expect(file.entries.map(({ path }) => path)).toEqual(['y', 'x']);
     expect(file.notes).toEqual([]);
-  });
-});
-
-describe('a file is refused', () => {
-  it.each<[string, readonly string[], string]>([
-    [
-      'with peaks only',
-      fileOf({}, ['100, 1'], '##PEAK TABLE= (XY..XY)'),
-      'the file holds a table of peaks, not a spectrum',
-    ],
-    ['with several variables', fileOf({}, ['1'], '##NTUPLES= NMR'), 'a table of several variables'],
-    ['without a table', fileOf().slice(0, 13), 'the file holds no table of a spectrum'],
-    [
-      'with an unknown form',
-      fileOf({}, ['1 2 3'], '##XYDATA= (X++(R..R))'),
-      'a table of the form (X++(R..R)) is not read',
-    ],
-    ['with an empty table', fileOf({}, []), 'the table holds no points'],
-    [
-      'with fewer points than promised',
-      fileOf({ NPOINTS: 6, LASTX: 110 }),
-      '##NPOINTS= says 6, and the table has 4 points',
-    ],
-    [
-      'with a line missing',
-      fileOf({ NPOINTS: 6, LASTX: 110 }, ['100 1 2', '108 5 6']),
-      '##NPOINTS= says 6, and the table has 4 points',
-    ],
-    [
-      'with a line that begins elsewhere',
-      fileOf({}, ['100 1 2', '108 3 4']),
-      'the line begins at 108, and its first value is point 3, which lies at 104',
-    ],
-    [
-      'with a wrong check',
-      fileOf({}, ['100A J', '102C J', '104D']),
-      'the line begins with the check value 3, and the differences before it lead to 2',
-    ],
-    [
-      'cut off',
-      fileOf({ NPOINTS: 6, LASTX: 110 }).slice(0, -1),
-      'no ##END=, so the file was cut off',
-    ],
-    [
-      'with words in the table',
-      fileOf({}, ['100 1 2', '104 three']),
-      '“three” is no part of a JCAMP-DX table',
-    ],
-  ])('%s', async (_, lines, what) => {
-    expect(errorSentence(await refusal(lines))).toContain(what);
-  });
-
-  it('empty, or of bytes', async () => {
-    for (const bytes of [new Uint8Array(0), Uint8Array.from([0x23, 0x23, 0, 1, 2])]) {
-      const { error } = await outcomeOf(() => jcampReader.open(memorySource('a.jdx', bytes)));
-      expectScanError(error);
-    }
-  });
-
-  it('and let go of; an opened one when it is closed', async () => {
-    const bytes = new TextEncoder().encode(fileOf().join('\n'));
-    const good = spySource('a.jdx', bytes);
-    (await jcampReader.open(good)).close();
-    expect(good.seen.closed).toBe(1);
-    const bad = spySource('a.jdx', bytes.slice(0, 100));
-    await outcomeOf(() => jcampReader.open(bad));
-    expect(bad.seen.closed).toBe(1);
-  });
-
-  it('when it is stopped', async () => {
-    const signal = AbortSignal.abort();
-    const source = memorySource('a.jdx', new TextEncoder().encode(fileOf().join('\n')));
-    await expect(jcampReader.open(source, { signal })).rejects.toMatchObject({ kind: 'cancelled' });
   });
 });
 

@@ -56,6 +56,14 @@ describe('long rows', () => {
     ]);
   });
 
+  it('need no header along one quantity either', async () => {
+    const lines = ['-1 600 5', '-1 601 6', '-1 602 7', '0 600 8', '0 601 9', '0 602 10'];
+    const file = await openText(lines, 'scan.dat');
+    expect(shapesOf(file)).toEqual(['counts 1 × 2 × 3 uint8', 'axis 3 uint16', 'column 1 2 int8']);
+    const one = await openText(lines.slice(0, 3), 'scan.dat');
+    expect(shapesOf(one)).toEqual(['column 1 3 int8', 'column 2 3 uint16', 'column 3 3 uint8']);
+  });
+
   it('keep further axes as vectors and further values as cubes', async () => {
     const file = await openText([
       'x,y,pixel,wavelength_nm,raw_counts,dark_counts',

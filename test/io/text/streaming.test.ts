@@ -17,15 +17,19 @@ describe('a cube of nine million values with a row per pixel', () => {
   const places = Array.from({ length: ny * nx }, (_, i) => [Math.floor(i / nx), i % nx] as const);
 
   it.each([
-    ['by rows', places],
-    ['in any order', places.map((_, i) => places[(i * 1237 + 11) % places.length])],
-  ])('%s', async (_, order) => {
+    ['by rows', places, 0.03],
+    ['in any order', places.map((_, i) => places[(i * 1237 + 11) % places.length]), 0],
+  ])('%s', async (_, order, mostReadAgain) => {
     const text = [header, ...order.map(([y, x]) => row(y, x))].join('\n');
     const source = spySource('scan.csv', encoder.encode(text));
     const file = await textReader.open(source);
     expect(file.entries[0]).toMatchObject({ path: 'counts', shape: [ny, nx, nk], type: 'uint8' });
     expect(source.seen.bytes).toBeLessThan(1.2 * source.size);
-    const block = await file.read('counts', [17, 3, 0], [2, 4, 6]);
+    const shares: number[] = [];
+    const onProgress = (share: number) => shares.push(share);
+    const block = await file.read('counts', [17, 3, 0], [2, 4, 6], { onProgress });
+    expect(shares.at(-1)).toBe(1);
+    expect(shares.every((share, i) => i === 0 || share > shares[i - 1])).toBe(true);
     let at = 0;
     for (const y of [17, 18]) {
       for (const x of [3, 4, 5, 6]) {
@@ -35,8 +39,8 @@ describe('a cube of nine million values with a row per pixel', () => {
     const before = source.seen.bytes;
     const next = await file.read('counts', [ny - 1, nx - 1, 4], [1, 1, 2]);
     expect([...next]).toEqual([valueAt(ny - 1, nx - 1, 4), 7]);
-    // The pixels that follow a block are kept with it: this one was there already.
-    expect(source.seen.bytes).toBe(before);
+    // In order, little is read for a pixel; in any order, as many as can be held were kept with the block.
+    expect(source.seen.bytes - before).toBeLessThanOrEqual(mostReadAgain * source.size);
     const stop = new AbortController();
     stop.abort();
     const stopped = file.read('counts', [0, 0, 0], [1, nx, nk], { signal: stop.signal });

@@ -14,6 +14,8 @@ import { columnOf, GrowingColumn } from './value-range';
 
 /** Far more channels than any spectrum has. */
 const mostRows = 4 << 20;
+/** 256 MB of doubles. */
+const mostValues = 32 << 20;
 
 interface ColumnsRead {
   readonly columns: readonly GrowingColumn[];
@@ -72,9 +74,10 @@ async function columnsOf(
       }
       lines.push(batchLines[i]);
     });
-    if (lines.length > mostRows) {
+    const most = Math.min(mostRows, Math.floor(mostValues / numbers.length));
+    if (lines.length > most) {
       throw scanError(
-        `the table has more than ${mostRows} rows of ${numbers.length} columns, which is no spectrum`,
+        `the table has more than ${most} rows of ${numbers.length} columns, which is no spectrum`,
         table.file.source.name,
         'Name the columns if it is a map (x, y, axis, counts), or save it as HDF5 or npy.',
       );

@@ -37,10 +37,13 @@ function candidates(lines: readonly string[]): readonly Dialect[] {
   const has = (sign: string): boolean => lines.some((line) => line.includes(sign));
   const marks: readonly DecimalMark[] = has(',') ? ['.', ','] : ['.'];
   const used = delimiters.filter((delimiter) => has(delimiter) || (delimiter === ' ' && has('\t')));
-  return (used.length === 0 ? [delimiters[0]] : [...used, delimiters[0]])
-    .filter((delimiter, i, all) => all.indexOf(delimiter) === i)
-    .flatMap((delimiter) => marks.map((mark) => ({ delimiter, mark })))
-    .filter(({ delimiter, mark }) => !(delimiter === ',' && mark === ','));
+  return (
+    (used.length === 0 ? [delimiters[0]] : [...used, delimiters[0]])
+      .filter((delimiter, i, all) => all.indexOf(delimiter) === i)
+      .flatMap((delimiter) => marks.map((mark) => ({ delimiter, mark })))
+      // Between quotes a cell may hold a comma of its own: "599,778","0,284".
+      .filter(({ delimiter, mark }) => delimiter !== ',' || mark !== ',' || has('"'))
+  );
 }
 
 function best(found: readonly DialectFound[]): DialectFound | null {
@@ -132,7 +135,7 @@ export function isDoubtfulComma(
   rows: readonly (readonly string[])[],
   names: readonly string[] | null,
 ): boolean {
-  if (dialect.delimiter !== ',') return false;
+  if (dialect.delimiter !== ',' || dialect.mark === ',') return false;
   const [first] = rows;
   const columns = first.length;
   if (columns < 2 || rows.some((cells) => cells.some((cell) => cell.includes('.')))) return false;

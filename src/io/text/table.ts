@@ -39,6 +39,7 @@ export async function openTable(source: ByteSource, options: ReadOptions): Promi
   const found = findDialect(head.lines.map(({ text }) => text));
   if (found === null) throw noNumbers(head, name);
   const { dialect, isText } = found;
+  if (dialect.delimiter === ' ') refuseGroupedDigits(head.lines, name);
   const tableHead = findTableHead(head.lines, found, name);
   const { names, units, first, columns, sample, notes } = tableHead;
   const headings =
@@ -77,6 +78,14 @@ const delimiterNames: Readonly<Record<Delimiter, string>> = {
 export function nameOfColumn(headings: readonly Heading[] | null, column: number): string {
   const text = headings?.[column]?.text ?? '';
   return text === '' ? `column ${column + 1}` : text;
+}
+
+/** Between tabs, "12 345" is one number with a thousands separator and not two numbers. */
+function refuseGroupedDigits(lines: readonly HeadLine[], name: string): void {
+  for (const { text, number } of lines) {
+    const grouped = text.includes('\t') ? text.split('\t').find(hasThousandsSeparators) : undefined;
+    if (grouped !== undefined) throw thousands(grouped, `${name}: line ${number}`);
+  }
 }
 
 function refuseManyColumns(lines: readonly HeadLine[], name: string): void {

@@ -146,6 +146,12 @@ describe('text is refused', () => {
       'scan.csv',
     ],
     [
+      'thousands separators',
+      'a\tb\n600.5\t12 345\n601.5\t13 456\n',
+      'the number “12 345” has thousands separators',
+      'scan.csv: line 2',
+    ],
+    [
       'two rows at one place',
       'x,y,600,601\n0,0,1,2\n1,0,3,4\n\n0,0,5,6\n',
       'a second row is at x = 0, y = 0',

@@ -57,6 +57,12 @@ describe('decimal commas', () => {
     expect(file.notes).toEqual(['Commas were read as decimal marks.']);
   });
 
+  it('are read between commas where every such cell is between quotes', async () => {
+    const file = await openText('"nm","counts"\n"599,778","0,2836"\n"600,742","-1,5"\n');
+    expect(await numbersOf(file, 'nm')).toEqual([599.778, 600.742]);
+    expect(await numbersOf(file, 'counts')).toEqual([0.2836, -1.5]);
+  });
+
   it('may stand in the header alone', async () => {
     const file = await openText('x;y;600;601,25\n0;0;5;6\n1;0;7;8\n');
     expect(await numbersOf(file, 'axis')).toEqual([600, 601.25]);

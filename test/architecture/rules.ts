@@ -1,11 +1,12 @@
 /** The rules of the architecture; each gives one sentence for each breach. */
-import { layerOf, layers, mayUseNode, openToAll } from './layers';
+import { layerOf, layers, mayUseNode, openToAll, packageFile } from './layers';
 import type { ImportOf, SourceFile, SyntaxNode } from './source-files';
 
 export function layerBreaches(file: SourceFile): readonly string[] {
   const own = layerOf(file.path);
   return file.imports.flatMap((one) => {
     if (one.target === null || one.target === openToAll) return [];
+    if (one.target === packageFile && ['app', 'cli'].includes(own)) return [];
     const other = layerOf(one.target);
     if (file.path !== openToAll && (other === own || mayImport(own, other, one))) return [];
     return [`${file.path} imports ${one.isType ? 'types' : 'values'} of ${one.target}`];
@@ -17,22 +18,32 @@ function mayImport(own: string, other: string, { isType }: ImportOf): boolean {
   return values.includes(other) || (isType && types.includes(other));
 }
 
-/** Node's modules in files that browsers run too, and packages in the layer that needs none. */
-export function packageBreaches(file: SourceFile): readonly string[] {
+/** Node's modules in files that browsers run too, and packages outside of the folders that are theirs. */
+export function packageBreaches(
+  file: SourceFile,
+  homes: ReadonlyMap<string, readonly string[]>,
+): readonly string[] {
   return file.imports.flatMap(({ specifier, target }) => {
     if (target !== null) return [];
-    const isNode = specifier.startsWith('node:');
-    const isAllowed = isNode ? mayUseNode(file.path) : layerOf(file.path) !== 'science';
+    const folders = homes.get(packageOf(specifier)) ?? [];
+    const isAllowed = specifier.startsWith('node:')
+      ? mayUseNode(file.path)
+      : folders.some((folder) => file.path.startsWith(`${folder}/`));
     return isAllowed ? [] : [`${file.path} imports ${specifier}`];
   });
 }
 
-/** Every file that imports itself in the end, by the shortest way from it, types included. */
+/** "d3-array", "@noble/hashes" of "@noble/hashes/sha2.js" */
+export function packageOf(specifier: string): string {
+  return specifier.split('/', specifier.startsWith('@') ? 2 : 1).join('/');
+}
+
+/** Every file that imports itself in the end, by the shortest way from it; types are gone when the program runs. */
 export function importCycles(files: readonly SourceFile[]): readonly string[] {
   const next = new Map(
     files.map(({ path, imports }) => [
       path,
-      imports.flatMap(({ target }) => (target === null ? [] : [target])),
+      imports.flatMap(({ target, isType }) => (target === null || isType ? [] : [target])),
     ]),
   );
   const cycles = new Map<string, string>();

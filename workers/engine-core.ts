@@ -13,11 +13,12 @@ import type { ScanPlan } from '../src/io/scan-plan';
 import { maskedRowSums } from '../src/science/bands/row-sums';
 import { SlabBands } from '../src/science/bands/slab-bands';
 import { prepareSlab, type SlabData } from '../src/science/bands/slab-data';
-import { pixelSpectrum } from '../src/science/bands/tiled-counts';
+import { pixelSpectrum, tilePixelsFor } from '../src/science/bands/tiled-counts';
 import type { Slab } from '../src/science/scan';
 import { elementContexts } from './element-context';
 import type { Pixel, RowRange, SlabSummary, SourceHandle, WorkerEngine } from './engine';
 import { companionNamed, type ToByteSource, withCompanions, withContainer } from './file-access';
+import { createMomentKernel } from './kernel/moment-kernel';
 import { nextTurn } from './turn';
 
 /** Reading takes about two thirds of loading, summing up the rest. */
@@ -93,10 +94,13 @@ export function createEngineCore(toByteSource: ToByteSource): WorkerEngine {
           });
           const type = container.entries.find(({ path }) => path === plan.cube.path)?.type;
           const context = { ...plan.meta, ...elementContexts[type ?? 'float64'] };
-          const data = await prepare(prepareSlab(slab, context), slab, signal, (share) =>
+          const { nk } = slab.shape;
+          const kernel = createMomentKernel(tilePixelsFor(nk), nk);
+          const steps = prepareSlab(slab, context, kernel);
+          const data = await prepare(steps, slab, signal, (share) =>
             onProgress(readingShare + (1 - readingShare) * share),
           );
-          const loaded = { rows, nx: plan.meta.shape.nx, bands: new SlabBands(data) };
+          const loaded = { rows, nx: plan.meta.shape.nx, bands: new SlabBands(data, kernel) };
           slabs.set(scanId, loaded);
           return summaryOf(loaded);
         }),

@@ -10,19 +10,22 @@ import { channelEdges } from '../../src/science/axis';
 import type { EnergyBand } from '../../src/science/bands/band';
 import { SlabBands } from '../../src/science/bands/slab-bands';
 import { prepareSlab } from '../../src/science/bands/slab-data';
+import { tilePixelsFor } from '../../src/science/bands/tiled-counts';
 import { createRandom } from '../../src/science/numeric/random';
 import type { EnergyAxis } from '../../src/science/scan';
 import { evFromNm } from '../../src/science/units';
 import { elementContexts } from '../../workers/element-context';
 import type { OpenScan } from '../../workers/engine';
+import { createMomentKernel } from '../../workers/kernel/moment-kernel';
 import { createNodeEngine } from '../../workers/node-engine';
-import { median, ms, printTable, quantile, type Row, timesOf, told } from './measure';
+import { median, ms, printTable, quantile, type Row, timesInTurn, timesOf, told } from './measure';
 import { plainTotals, servesPlainPass, startPlainThreads } from './plain-pass';
 import { cubeShape, syntheticCounts, wavelengths } from './synthetic-cube';
 
 const quantities = ['integral', 'centroid'] as const;
 const frameMs = 16;
-const bandRuns = 61;
+const rounds = 15;
+const bandsPerRound = 6;
 
 async function bench(): Promise<void> {
   const { ny, nx, nk } = cubeShape;
@@ -84,20 +87,32 @@ function energyAt({ edgesEv }: EnergyAxis, share: number): number {
   return edgesEv[0] + share * (last - edgesEv[0]);
 }
 
+interface Measured {
+  readonly rows: readonly Row[];
+  /** of a new band */
+  readonly bandMs: number;
+}
+
 /** In this thread alone, without messages. */
 async function benchAlone(counts: Uint16Array): Promise<readonly Row[]> {
   const { ny, nx, nk } = cubeShape;
   const totals = new Float64Array(ny * nx);
   const bandAt = bandMaker();
+  const kernel = createMomentKernel(tilePixelsFor(nk), nk);
   const steps = prepareSlab(
     { y0: 0, shape: cubeShape, counts: counts.slice() },
     { axis: energyAxis(), noise: { kind: 'poisson' }, ...elementContexts.uint16 },
+    kernel,
   );
   let step = steps.next();
   while (!step.done) step = steps.next();
-  const bands = new SlabBands(step.value);
-  const plain = await timesOf(() => plainTotals(counts, nk, totals), 15);
-  const band = await timesOf((run) => bands.maps(bandAt(run), quantities), bandRuns, 10);
+  const bands = new SlabBands(step.value, kernel);
+  const { first: plain, second: band } = await timesInTurn(
+    () => plainTotals(counts, nk, totals),
+    (run) => bands.maps(bandAt(run), quantities),
+    rounds,
+    bandsPerRound,
+  );
   return [
     told('plain summing pass, one thread', ms(median(plain))),
     ratioRow('new band, integral and centroid with errors, one thread', band, plain),
@@ -105,25 +120,20 @@ async function benchAlone(counts: Uint16Array): Promise<readonly Row[]> {
 }
 
 /** Through the pool, as the app asks. */
-async function benchPool(
-  path: string,
-  workers: number,
-): Promise<{ readonly rows: readonly Row[]; readonly bandMs: number }> {
+async function benchPool(path: string, workers: number): Promise<Measured> {
   const engine = createNodeEngine({ workerCount: workers });
   const threads = await startPlainThreads(new URL(import.meta.url), workers);
   try {
-    const scan = { kind: 'path' as const, name: 'cube.npy', path };
-    const inputs = { scan, companions: [] };
+    const file = { kind: 'path' as const, name: 'cube.npy', path };
+    const inputs = { scan: file, companions: [] };
     const axis = { ...wavelengths, kind: 'wavelength', unit: 'nm', medium: 'vacuum' } as const;
     const { plan } = await engine.inspect(inputs, { axis });
     if (plan === null) throw new Error('the cube has no plan');
     const openings = await timesOf(async () => (await engine.open(inputs, plan)).release(), 3, 1);
     const open = await engine.open(inputs, plan);
-    const rows = await benchScan(open, threads.pass, workers);
-    const bandAt = bandMaker();
-    const ask = (run: number) => open.bandMaps({ band: bandAt(run), quantities });
-    const bandMs = median(await timesOf(ask, bandRuns, 10));
-    return { rows: [...rows, told('open 128 MiB from disk', ms(median(openings)))], bandMs };
+    const scan = await benchScan(open, threads.pass, workers);
+    const opening = told('open 128 MiB from disk', ms(median(openings)));
+    return { rows: [...scan.rows, opening], bandMs: scan.bandMs };
   } finally {
     await threads.close();
     await engine.close();
@@ -134,13 +144,16 @@ async function benchScan(
   open: OpenScan,
   plainPass: () => Promise<void>,
   workers: number,
-): Promise<readonly Row[]> {
+): Promise<Measured> {
   const { ny, nx } = cubeShape;
   const bandAt = bandMaker();
   const dragAt = dragMaker();
-  const plain = await timesOf(plainPass, 15);
-  const ask = (run: number) => open.bandMaps({ band: bandAt(run), quantities });
-  const band = await timesOf(ask, bandRuns, 10);
+  const { first: plain, second: band } = await timesInTurn(
+    plainPass,
+    (run) => open.bandMaps({ band: bandAt(run), quantities }),
+    rounds,
+    bandsPerRound,
+  );
   const drag = await timesOf((run) => open.bandMaps({ band: dragAt(run), quantities }), 100, 10);
   const hover = await timesOf(
     (run) => open.spectrum({ y: (run * 37) % ny, x: (run * 101) % nx }),
@@ -149,7 +162,7 @@ async function benchScan(
   );
   const { countsBytes, sumsBytes } = open.overview;
   const share = sumsBytes / countsBytes;
-  return [
+  const rows = [
     told(`plain summing pass, ${workers} threads`, ms(median(plain))),
     ratioRow(`new band through the pool, ${workers} workers`, band, plain),
     frameRow('drag of a band’s end, one change', drag),
@@ -161,6 +174,7 @@ async function benchScan(
       isMet: share < 0.25,
     },
   ];
+  return { rows, bandMs: median(band) };
 }
 
 function ratioRow(what: string, band: readonly number[], plain: readonly number[]): Row {

@@ -15,6 +15,28 @@ export async function timesOf(
   return measured;
 }
 
+/**
+ * Two kinds of work in turn, so that whatever else the machine does falls on both alike.
+ *
+ * @param often - how many times the second is done for each time of the first
+ */
+export async function timesInTurn(
+  first: (run: number) => unknown,
+  second: (run: number) => unknown,
+  times: number,
+  often: number,
+): Promise<{ readonly first: readonly number[]; readonly second: readonly number[] }> {
+  const measured = { first: [] as number[], second: [] as number[] };
+  await timesOf(first, 1, 2);
+  await timesOf(second, 1, 10);
+  for (let run = 0; run < times; run++) {
+    measured.first.push(...(await timesOf(() => first(run), 1, 0)));
+    // The first after the other work finds the caches full of that.
+    measured.second.push(...(await timesOf((i) => second(run * often + i), often, 1)));
+  }
+  return measured;
+}
+
 /** The value below which a share of the times lies. */
 export function quantile(times: readonly number[], share: number): number {
   const sorted = [...times].sort((a, b) => a - b);

@@ -4,9 +4,9 @@
  */
 import type { BandPlan } from './band-plan';
 import { isCoarse } from './block-layout';
-import type { BlockSums, HighPlanes, LowPlanes } from './block-sums';
+import type { BlockSums } from './block-sums';
 import { type EdgeInProgress, type EdgeMoments, nearestEdge } from './edge-moments';
-import { highMoments, lowMoments, zeroNoData } from './moment-kernels';
+import { type HighPlanes, type LowPlanes, type MomentKernel, zeroNoData } from './moment-kernel';
 import { type SlabData, writeVariances } from './slab-data';
 import type { TileFloor } from './tile-floor';
 import { type Tile, tileChannels } from './tiled-counts';
@@ -24,7 +24,7 @@ export interface WantedSums {
   readonly high: boolean;
 }
 
-/** Sums and work arrays for one tile; every plane has one value per pixel. */
+/** Sums for one tile; every plane has one value per pixel. */
 export class TileSums {
   /** Σ f c eʲ, j = 0 … 2; less the floor once it is taken */
   readonly counts: LowPlanes;
@@ -33,16 +33,16 @@ export class TileSums {
   /** |Σ f c| and the floor's share of it together: what rounding of `counts` is measured by */
   readonly gross: Float64Array;
   readonly #data: SlabData;
-  #run = new Float64Array(0);
-  #varianceRun = new Float64Array(0);
+  readonly #kernel: MomentKernel;
   /** the band's first and last channel: counts, and what their variances are made from */
   readonly #ends: readonly Float64Array[];
   readonly #weighed: readonly Float64Array[];
   readonly #partial: HighPlanes;
 
-  constructor(data: SlabData) {
+  constructor(data: SlabData, kernel: MomentKernel) {
     const plane = (): Float64Array => new Float64Array(data.tiled.tilePixels);
     this.#data = data;
+    this.#kernel = kernel;
     this.counts = [plane(), plane(), plane()];
     this.variances = [plane(), plane(), plane(), plane(), plane()];
     this.gross = plane();
@@ -70,28 +70,26 @@ export class TileSums {
     const { context, affine, tiled } = this.#data;
     const { first, last, firstShare, lastShare } = plan.channels;
     const { pixels } = tile;
-    const length = (last + 1 - first) * pixels;
-    const values = this.#runOf(length);
-    const run = { values, pixels, k0: first, k1: last + 1 };
-    const shareEnds = (of: Float64Array): void => {
-      scale(of, 0, pixels, firstShare);
-      if (last > first) scale(of, length - pixels, length, lastShare);
+    const run = { pixels, k0: first, k1: last + 1 };
+    const length = (run.k1 - first) * pixels;
+    const counts = tileChannels(tiled, tile, first, run.k1);
+    const shareEnds = (values: Float64Array): void => {
+      scale(values, 0, pixels, firstShare);
+      if (last > first) scale(values, length - pixels, length, lastShare);
     };
-    tileChannels(tiled, tile, first, last + 1, values);
-    const [v0, v1, v2, v3, v4] = this.variances;
     if (wanted.variances && affine === null) {
-      if (this.#varianceRun.length < length) this.#varianceRun = new Float64Array(length);
-      const weighed = { ...run, values: this.#varianceRun };
-      writeVariances(values, length, context.noise, weighed.values);
+      const values = this.#kernel.fill(counts);
+      writeVariances(values, length, context.noise, values);
       // Shares enter squared.
-      shareEnds(weighed.values);
-      shareEnds(weighed.values);
-      lowMoments(weighed, plan.energies, v0, v1, v2);
-      if (wanted.high) highMoments(weighed, plan.energies, v3, v4);
+      shareEnds(values);
+      shareEnds(values);
+      this.#keep(this.#kernel.low(run, plan.energies), this.variances, pixels, 0);
+      if (wanted.high) this.#keep(this.#kernel.high(run, plan.energies), this.variances, pixels, 3);
     }
+    const values = this.#kernel.fill(counts);
     if (!context.isUnsigned) zeroNoData(values, length);
     shareEnds(values);
-    lowMoments(run, plan.energies, ...this.counts);
+    this.#keep(this.#kernel.low(run, plan.energies), this.counts, pixels, 0);
     if (!wanted.variances || affine === null) return;
     const less = { first: 1 - firstShare, last: last > first ? 1 - lastShare : 0 };
     const ends = [values.subarray(0, pixels), values.subarray(length - pixels, length)];
@@ -99,25 +97,36 @@ export class TileSums {
     withSquaredShares(this.counts, ends, less, energies, pixels, this.variances);
     if (!wanted.high) return;
     shareEnds(values);
-    highMoments(run, plan.energies, v3, v4);
+    this.#keep(this.#kernel.high(run, plan.energies), this.variances, pixels, 3);
+  }
+
+  /** The kernel's results are overwritten by its next. */
+  #keep(
+    results: readonly Float64Array[],
+    planes: readonly Float64Array[],
+    pixels: number,
+    from: number,
+  ): void {
+    for (const [order, result] of results.entries()) {
+      planes[from + order].set(result.subarray(0, pixels));
+    }
   }
 
   #byEdges(plan: BandPlan, edges: BandEdges, tile: Tile, wanted: WantedSums): void {
+    const { firstShare, lastShare, first, last } = plan.channels;
     const from = edges.from.moments;
     const to = edges.to.moments;
-    const { firstShare, lastShare, first, last } = plan.channels;
     this.#readEnds(from, to, tile);
-    const weights = { first: firstShare, last: lastShare };
-    const energies = { first: plan.energies[first], last: plan.energies[last] };
-    betweenEdges(from.counts, to.counts, this.#ends, weights, energies, tile, this.counts);
-    if (!wanted.variances) return;
+    const shares = { first: firstShare, last: lastShare };
     const squares = { first: firstShare * firstShare, last: lastShare * lastShare };
-    if (from.variances !== null && to.variances !== null) {
-      const { variances } = this;
-      betweenEdges(from.variances, to.variances, this.#weighed, squares, energies, tile, variances);
+    const energies = { first: plan.energies[first], last: plan.energies[last] };
+    const between = { below: from.counts, above: to.counts, energies, tile };
+    if (from.variances === null || to.variances === null) {
+      sumTwice(between, this.#ends, shares, this.counts, squares, this.variances);
     } else {
-      const less = { first: firstShare - squares.first, last: lastShare - squares.last };
-      withSquaredShares(this.counts, this.#ends, less, energies, tile.pixels, this.variances);
+      sumOnce(between, this.#ends, shares, this.counts);
+      const varying = { ...between, below: from.variances, above: to.variances };
+      if (wanted.variances) sumOnce(varying, this.#weighed, squares, this.variances);
     }
     if (wanted.high) this.#highByEdges(plan, tile, squares);
   }
@@ -170,18 +179,15 @@ export class TileSums {
     const k0 = Math.min(k, nearest.k);
     const k1 = Math.max(k, nearest.k);
     const length = (k1 - k0) * pixels;
-    const values = this.#runOf(length);
-    tileChannels(tiled, tile, k0, k1, values);
+    const values = this.#kernel.fill(tileChannels(tiled, tile, k0, k1));
     if (sums.variances !== null) writeVariances(values, length, context.noise, values);
     else if (!context.isUnsigned) zeroNoData(values, length);
-    highMoments({ values, pixels, k0, k1 }, energies, third, fourth);
-    const kept = nearest.index < 0 ? null : sums.high[nearest.index];
-    if (kept === null) return;
-    const [kept3, kept4] = kept;
+    const [partial3, partial4] = this.#kernel.high({ pixels, k0, k1 }, energies);
+    const [kept3, kept4] = (nearest.index < 0 ? null : sums.high[nearest.index]) ?? [null, null];
     const sign = nearest.k <= k ? 1 : -1;
     for (let p = 0; p < pixels; p++) {
-      third[p] = kept3[first + p] + sign * third[p];
-      fourth[p] = kept4[first + p] + sign * fourth[p];
+      third[p] = (kept3 === null ? 0 : kept3[first + p]) + sign * partial3[p];
+      fourth[p] = (kept4 === null ? 0 : kept4[first + p]) + sign * partial4[p];
     }
   }
 
@@ -194,11 +200,6 @@ export class TileSums {
       const added = affine.constant * shareSquares[order];
       for (let p = 0; p < pixels; p++) plane[p] = affine.slope * plane[p] + added;
     }
-  }
-
-  #runOf(length: number): Float64Array {
-    if (this.#run.length < length) this.#run = new Float64Array(length);
-    return this.#run;
   }
 }
 
@@ -213,20 +214,24 @@ function scale(values: Float64Array, from: number, to: number, by: number): void
   for (let i = from; i < to; i++) values[i] *= by;
 }
 
-/** Zeroth to second moments of the whole channels between two edges and the weighted channels outside them. */
-function betweenEdges(
-  [b0, b1, b2]: LowPlanes,
-  [a0, a1, a2]: LowPlanes,
+/** Whole channels between two edges, and where the channels outside them lie. */
+interface Between {
+  readonly below: LowPlanes;
+  readonly above: LowPlanes;
+  readonly energies: EndPair;
+  readonly tile: Tile;
+}
+
+/** Zeroth to second moments of the whole channels and the weighted end channels. */
+function sumOnce(
+  { below: [b0, b1, b2], above: [a0, a1, a2], energies, tile }: Between,
   [first, last]: readonly Float64Array[],
-  weights: EndPair,
-  energies: EndPair,
-  { first: offset, pixels }: Tile,
+  { first: w1, last: w2 }: EndPair,
   [s0, s1, s2]: readonly Float64Array[],
 ): void {
-  const { first: w1, last: w2 } = weights;
   const { first: e1, last: e2 } = energies;
-  for (let p = 0; p < pixels; p++) {
-    const at = offset + p;
+  for (let p = 0; p < tile.pixels; p++) {
+    const at = tile.first + p;
     const c1 = first[p] * w1;
     const c2 = last[p] * w2;
     const c1e = c1 * e1;
@@ -234,6 +239,36 @@ function betweenEdges(
     s0[p] = a0[at] - b0[at] + (c1 + c2);
     s1[p] = a1[at] - b1[at] + (c1e + c2e);
     s2[p] = a2[at] - b2[at] + (c1e * e1 + c2e * e2);
+  }
+}
+
+/** The same with two sets of weights at once. */
+function sumTwice(
+  { below: [b0, b1, b2], above: [a0, a1, a2], energies, tile }: Between,
+  [first, last]: readonly Float64Array[],
+  { first: w1, last: w2 }: EndPair,
+  [s0, s1, s2]: readonly Float64Array[],
+  { first: x1, last: x2 }: EndPair,
+  [v0, v1, v2]: readonly Float64Array[],
+): void {
+  const { first: e1, last: e2 } = energies;
+  const ee1 = e1 * e1;
+  const ee2 = e2 * e2;
+  for (let p = 0; p < tile.pixels; p++) {
+    const at = tile.first + p;
+    const whole0 = a0[at] - b0[at];
+    const whole1 = a1[at] - b1[at];
+    const whole2 = a2[at] - b2[at];
+    const c1 = first[p] * w1;
+    const c2 = last[p] * w2;
+    s0[p] = whole0 + (c1 + c2);
+    s1[p] = whole1 + (c1 * e1 + c2 * e2);
+    s2[p] = whole2 + (c1 * ee1 + c2 * ee2);
+    const d1 = first[p] * x1;
+    const d2 = last[p] * x2;
+    v0[p] = whole0 + (d1 + d2);
+    v1[p] = whole1 + (d1 * e1 + d2 * e2);
+    v2[p] = whole2 + (d1 * ee1 + d2 * ee2);
   }
 }
 

@@ -75,7 +75,7 @@ export function blockLayout(need: SumsNeed): BlockLayout | null {
   return {
     edges,
     coarseEvery,
-    spanChannels: length >> 1,
+    spanChannels: length,
     coarseSpanChannels: (coarseEvery * length) >> 1,
   };
 }

@@ -6,15 +6,11 @@
  */
 import type { CountsArray } from '../scan';
 import { type BlockLayout, hasSmallTotals, isCoarse, type SumsNeed } from './block-layout';
-import { highMoments, lowMoments, type TileRun } from './moment-kernels';
+import type { HighPlanes, LowPlanes, MomentKernel, TileRun } from './moment-kernel';
 import type { Tile } from './tiled-counts';
 
-/** Values of every pixel of the slab: zeroth, first and second moment. */
-export type LowPlanes = readonly [Float64Array, Float64Array, Float64Array];
-/** The same where the zeroth moment may be a 32-bit whole number. */
+/** Zeroth, first and second moment; the zeroth may be a 32-bit whole number. */
 export type KeptPlanes = readonly [Float64Array | Uint32Array, Float64Array, Float64Array];
-/** Third and fourth moment. */
-export type HighPlanes = readonly [Float64Array, Float64Array];
 
 /** Moments with energies relative to the slab's reference. Entry b is of all channels below layout.edges[b]. */
 export interface BlockSums {
@@ -101,24 +97,26 @@ export class RunningSum {
   }
 }
 
-/** Fills block sums tile by tile; keeps the work arrays between tiles. */
+/** Fills block sums tile by tile. */
 export class BlockSumsInProgress {
   readonly sums: BlockSums;
   readonly #energies: Float64Array;
-  readonly #moments: readonly Float64Array[];
+  readonly #kernel: MomentKernel;
+  readonly #best: Float64Array;
   readonly #counts: readonly RunningSum[];
   readonly #variances: readonly RunningSum[];
   readonly #high: readonly RunningSum[];
 
   /** @param energies - (nk) relative to the reference */
-  constructor(sums: BlockSums, energies: Float64Array, tilePixels: number) {
+  constructor(sums: BlockSums, energies: Float64Array, kernel: MomentKernel, tilePixels: number) {
     const running = (count: number): RunningSum[] =>
       Array.from({ length: count }, () => new RunningSum(tilePixels));
     this.sums = sums;
     this.#energies = energies;
-    this.#moments = Array.from({ length: 3 }, () => new Float64Array(tilePixels));
+    this.#kernel = kernel;
+    this.#best = new Float64Array(tilePixels);
     this.#counts = running(3);
-    this.#variances = running(sums.variances === null ? 0 : 3);
+    this.#variances = running(3);
     this.#high = running(2);
   }
 
@@ -126,10 +124,15 @@ export class BlockSumsInProgress {
     for (const sum of [...this.#counts, ...this.#variances, ...this.#high]) sum.reset();
   }
 
-  /** The highest counts of a block; `run` with no data still NaN. */
-  addHighest(block: number, { first }: Tile, { values, pixels, k0, k1 }: TileRun): void {
+  /** The highest counts of a block; no data is NaN in `values`, the run's channels. */
+  addHighest(
+    block: number,
+    { first }: Tile,
+    { pixels, k0, k1 }: TileRun,
+    values: Float64Array,
+  ): void {
     const place = this.sums.highestAt[block];
-    const best = this.#moments[0];
+    const best = this.#best;
     best.fill(Number.NEGATIVE_INFINITY, 0, pixels);
     let at = 0;
     for (let k = k0; k < k1; k++) {
@@ -144,25 +147,29 @@ export class BlockSumsInProgress {
     this.sums.highest[block].set(best.subarray(0, pixels), first);
   }
 
-  /** @param variances - null where they are a line of the counts; no data as 0 in both */
-  addMoments(block: number, { first }: Tile, counts: TileRun, variances: TileRun | null): void {
-    this.#addLow(this.sums.counts[block], this.#counts, counts, first);
-    if (variances !== null && this.sums.variances !== null) {
-      this.#addLow(this.sums.variances[block], this.#variances, variances, first);
-    }
-    const [third, fourth] = this.#moments;
-    const { pixels } = counts;
-    highMoments(variances ?? counts, this.#energies, third, fourth);
-    const kept = this.sums.high[block];
-    this.#high[0].add(third, pixels, kept?.[0] ?? null, first);
-    this.#high[1].add(fourth, pixels, kept?.[1] ?? null, first);
+  /** Counts of a block from the kernel's input; no data as 0. */
+  addCounts(block: number, tile: Tile, run: TileRun): void {
+    this.#addLow(this.sums.counts[block], this.#counts, run, tile);
+    if (this.sums.variances === null) this.#addHigh(block, run, tile);
   }
 
-  #addLow(kept: KeptPlanes, running: readonly RunningSum[], run: TileRun, first: number): void {
-    const [zeroth, one, two] = this.#moments;
-    lowMoments(run, this.#energies, zeroth, one, two);
-    for (const [order, moment] of this.#moments.entries()) {
+  /** Variances likewise, where they are no line of the counts. */
+  addVariances(block: number, tile: Tile, run: TileRun): void {
+    if (this.sums.variances === null) return;
+    this.#addLow(this.sums.variances[block], this.#variances, run, tile);
+    this.#addHigh(block, run, tile);
+  }
+
+  #addLow(kept: KeptPlanes, running: readonly RunningSum[], run: TileRun, { first }: Tile): void {
+    for (const [order, moment] of this.#kernel.low(run, this.#energies).entries()) {
       running[order].add(moment, run.pixels, kept[order], first);
+    }
+  }
+
+  #addHigh(block: number, run: TileRun, { first }: Tile): void {
+    const kept = this.sums.high[block];
+    for (const [order, moment] of this.#kernel.high(run, this.#energies).entries()) {
+      this.#high[order].add(moment, run.pixels, kept?.[order] ?? null, first);
     }
   }
 }

@@ -4,8 +4,8 @@
  * only; what is remembered is what would be computed again, bit for bit.
  */
 import type { CountsArray } from '../scan';
-import type { BlockSums, KeptPlanes, LowPlanes } from './block-sums';
-import { lowMoments, zeroNoData } from './moment-kernels';
+import type { BlockSums, KeptPlanes } from './block-sums';
+import { type LowPlanes, type MomentKernel, zeroNoData } from './moment-kernel';
 import { type SlabData, writeVariances } from './slab-data';
 import { type Tile, tileAt, tileChannels } from './tiled-counts';
 
@@ -38,20 +38,13 @@ export class EdgeCache {
   readonly #sums: BlockSums;
   /** the one used last comes last */
   #slots: readonly Slot[];
-  readonly #run: Float64Array;
-  readonly #partial: LowPlanes;
-  readonly #variances: Float64Array;
+  readonly #kernel: MomentKernel;
 
-  constructor(data: SlabData, sums: BlockSums) {
-    const { tiled } = data;
-    const { edges } = sums.layout;
+  constructor(data: SlabData, sums: BlockSums, kernel: MomentKernel) {
     this.#data = data;
     this.#sums = sums;
     this.#slots = [emptySlot(data, sums), emptySlot(data, sums)];
-    // No edge is farther from a kept sum than half a block.
-    this.#run = new Float64Array((edges[0] + 1) * tiled.tilePixels);
-    this.#variances = new Float64Array(sums.variances === null ? 0 : this.#run.length);
-    this.#partial = lowPlanes(tiled.tilePixels);
+    this.#kernel = kernel;
   }
 
   get bytes(): number {
@@ -87,25 +80,20 @@ export class EdgeCache {
     copyChannel(this.#data, tile, k - 1, edge.below);
     copyChannel(this.#data, tile, k, edge.above);
     const isBelow = nearest.k <= k;
-    const run = {
-      values: this.#run,
-      pixels: tile.pixels,
-      k0: Math.min(k, nearest.k),
-      k1: Math.max(k, nearest.k),
-    };
-    tileChannels(tiled, tile, run.k0, run.k1, run.values);
-    const length = (run.k1 - run.k0) * run.pixels;
-    const [p0, p1, p2] = this.#partial;
+    const k0 = Math.min(k, nearest.k);
+    const run = { pixels: tile.pixels, k0, k1: Math.max(k, nearest.k) };
+    const length = (run.k1 - k0) * run.pixels;
+    const counts = tileChannels(tiled, tile, k0, run.k1);
     if (edge.variances !== null && this.#sums.variances !== null) {
-      writeVariances(run.values, length, context.noise, this.#variances);
-      lowMoments({ ...run, values: this.#variances }, energies, p0, p1, p2);
+      const values = this.#kernel.fill(counts);
+      writeVariances(values, length, context.noise, values);
       const kept = nearest.index < 0 ? null : this.#sums.variances[nearest.index];
-      combine(kept, this.#partial, isBelow, tile, edge.variances);
+      combine(kept, this.#kernel.low(run, energies), isBelow, tile, edge.variances);
     }
-    if (!context.isUnsigned) zeroNoData(run.values, length);
-    lowMoments(run, energies, p0, p1, p2);
+    const values = this.#kernel.fill(counts);
+    if (!context.isUnsigned) zeroNoData(values, length);
     const kept = nearest.index < 0 ? null : this.#sums.counts[nearest.index];
-    combine(kept, this.#partial, isBelow, tile, edge.counts);
+    combine(kept, this.#kernel.low(run, energies), isBelow, tile, edge.counts);
   }
 }
 
@@ -131,25 +119,47 @@ export function nearestEdge(
   return nearest;
 }
 
+/** Kept sums and the channels between: added where these lie above the kept edge, else taken away. */
 function combine(
   kept: KeptPlanes | null,
-  partial: LowPlanes,
+  [part0, part1, part2]: LowPlanes,
   isBelow: boolean,
-  { first, pixels }: Tile,
-  out: LowPlanes,
+  tile: Tile,
+  [out0, out1, out2]: LowPlanes,
 ): void {
-  for (let order = 0; order < 3; order++) {
-    const base = kept?.[order] ?? null;
-    const part = partial[order];
-    const plane = out[order];
-    if (base === null) {
-      for (let p = 0; p < pixels; p++) plane[first + p] = part[p];
-    } else if (isBelow) {
-      for (let p = 0; p < pixels; p++) plane[first + p] = base[first + p] + part[p];
-    } else {
-      for (let p = 0; p < pixels; p++) plane[first + p] = base[first + p] - part[p];
+  if (kept === null) {
+    for (let p = 0; p < tile.pixels; p++) {
+      out0[tile.first + p] = part0[p];
+      out1[tile.first + p] = part1[p];
+      out2[tile.first + p] = part2[p];
     }
+    return;
   }
+  const sign = isBelow ? 1 : -1;
+  combineZeroth(kept[0], part0, sign, tile, out0);
+  combineHigher(kept[1], part1, sign, tile, out1);
+  combineHigher(kept[2], part2, sign, tile, out2);
+}
+
+/** Two functions for one sum: each then sees one type of array only, and is compiled for it. */
+function combineZeroth(
+  kept: Float64Array | Uint32Array,
+  part: Float64Array,
+  sign: number,
+  { first, pixels }: Tile,
+  out: Float64Array,
+): void {
+  for (let p = 0; p < pixels; p++) out[first + p] = kept[first + p] + sign * part[p];
+}
+
+function combineHigher(
+  kept: Float64Array,
+  part: Float64Array,
+  sign: number,
+  { first, pixels }: Tile,
+  out: Float64Array,
+): void {
+  for (let p = 0; p < pixels; p++) out[first + p] = kept[first + p] + sign * part[p];
 }
 
 /** Counts of channel k of a tile's pixels into a plane of the slab; 0 beyond the axis. */

@@ -6,6 +6,7 @@ import { type BandEdges, TileSums, type WantedSums } from './band-sums';
 import { directBand } from './direct-band';
 import { EdgeCache } from './edge-moments';
 import { Magnitudes } from './magnitudes';
+import type { MomentKernel } from './moment-kernel';
 import type { SlabData } from './slab-data';
 import { hasNoData } from './slab-survey';
 import { TileFloor } from './tile-floor';
@@ -61,10 +62,11 @@ export class SlabBands {
   readonly #peak: TilePeak;
   readonly #spectrum: Float64Array;
 
-  constructor(data: SlabData) {
+  /** @param kernel - as the slab was prepared with; not to be used by others meanwhile */
+  constructor(data: SlabData, kernel: MomentKernel) {
     this.data = data;
-    this.#edges = data.sums === null ? null : new EdgeCache(data, data.sums);
-    this.#sums = new TileSums(data);
+    this.#edges = data.sums === null ? null : new EdgeCache(data, data.sums, kernel);
+    this.#sums = new TileSums(data, kernel);
     this.#floor = new TileFloor(data);
     this.#magnitudes = data.sums === null ? null : new Magnitudes(data, data.sums);
     this.#peak = new TilePeak(data);

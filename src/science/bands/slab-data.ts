@@ -3,7 +3,7 @@ import { type AffineVariance, affineVariance, varianceLine } from '../noise';
 import type { CountsArray, EnergyAxis, NoiseModel, Slab } from '../scan';
 import { blockLayout } from './block-layout';
 import { type BlockSums, BlockSumsInProgress, blockSumsBytes, emptyBlockSums } from './block-sums';
-import { type TileRun, zeroNoData } from './moment-kernels';
+import { type MomentKernel, zeroNoData } from './moment-kernel';
 import { type SlabSurvey, SurveyInProgress } from './slab-survey';
 import {
   type Tile,
@@ -55,8 +55,14 @@ const runChannels = 64;
  * and infinities become no data.
  *
  * A generator, so that its caller can pause between tiles: yields the share done, 0 to 1.
+ *
+ * @param kernel - for tiles of `tilePixelsFor` this many channels
  */
-export function* prepareSlab(slab: Slab, context: SlabContext): Generator<number, SlabData> {
+export function* prepareSlab(
+  slab: Slab,
+  context: SlabContext,
+  kernel: MomentKernel,
+): Generator<number, SlabData> {
   const { ny, nx, nk } = slab.shape;
   const tilePixels = tilePixelsFor(nk);
   const tiled: TiledCounts = { counts: slab.counts, pixels: ny * nx, nk, tilePixels };
@@ -74,10 +80,11 @@ export function* prepareSlab(slab: Slab, context: SlabContext): Generator<number
       : new BlockSumsInProgress(
           emptyBlockSums(layout, need, tiled.pixels, slab.counts),
           energies,
+          kernel,
           tilePixels,
         );
   const edges = layout?.edges ?? plainEdges(nk);
-  const pass = new TilePass(tiled, context, { survey, blocks, edges, hasOwnVariance });
+  const pass = new TilePass(tiled, context, { survey, blocks, edges, kernel });
   for (let index = 0; index < tileCount(tiled); index++) {
     pass.prepare(tileAt(tiled, index));
     yield (index + 1) / tileCount(tiled);
@@ -110,58 +117,49 @@ interface PassParts {
   readonly survey: SurveyInProgress;
   readonly blocks: BlockSumsInProgress | null;
   readonly edges: Int32Array;
-  readonly hasOwnVariance: boolean;
+  readonly kernel: MomentKernel;
 }
 
-/** What is done to each tile; holds the arrays that are used again for every tile. */
+/** What is done to each tile. */
 class TilePass {
   readonly #tiled: TiledCounts;
   readonly #context: SlabContext;
   readonly #parts: PassParts;
   readonly #spare: CountsArray;
-  readonly #run: Float64Array;
-  readonly #variances: Float64Array;
 
   constructor(tiled: TiledCounts, context: SlabContext, parts: PassParts) {
     this.#tiled = tiled;
     this.#context = context;
     this.#parts = parts;
     this.#spare = tiled.counts.slice(0, tiled.tilePixels * tiled.nk);
-    const longest = parts.edges.reduce(
-      (most, edge, block) => Math.max(most, edge - (block === 0 ? 0 : parts.edges[block - 1])),
-      0,
-    );
-    this.#run = new Float64Array(longest * tiled.tilePixels);
-    this.#variances = new Float64Array(parts.hasOwnVariance ? this.#run.length : 0);
   }
 
   prepare(tile: Tile): void {
-    const { survey, blocks, edges } = this.#parts;
+    const { survey, blocks, edges, kernel } = this.#parts;
     const isFloat = dropInfinities(this.#tiled, tile);
     turnTile(this.#tiled, tile, this.#spare);
     blocks?.startTile();
     for (let block = 0; block < edges.length; block++) {
       const k0 = block === 0 ? 0 : edges[block - 1];
-      const run = { values: this.#run, pixels: tile.pixels, k0, k1: edges[block] };
-      tileChannels(this.#tiled, tile, run.k0, run.k1, run.values);
-      survey.add(tile, run);
+      const run = { pixels: tile.pixels, k0, k1: edges[block] };
+      const length = (run.k1 - run.k0) * run.pixels;
+      const counts = tileChannels(this.#tiled, tile, run.k0, run.k1);
+      const values = kernel.fill(counts);
+      survey.add(tile, run, values);
       if (blocks === null) continue;
-      blocks.addHighest(block, tile, run);
-      const variances = this.#variancesOf(run);
-      if (isFloat) zeroNoData(run.values, (run.k1 - run.k0) * run.pixels);
-      blocks.addMoments(block, tile, run, variances);
+      blocks.addHighest(block, tile, run, values);
+      if (blocks.sums.variances !== null) {
+        writeVariances(values, length, this.#context.noise, values);
+        blocks.addVariances(block, tile, run);
+        kernel.fill(counts);
+      }
+      if (isFloat) zeroNoData(values, length);
+      blocks.addCounts(block, tile, run);
     }
-  }
-
-  #variancesOf(run: TileRun): TileRun | null {
-    if (!this.#parts.hasOwnVariance) return null;
-    const length = (run.k1 - run.k0) * run.pixels;
-    writeVariances(run.values, length, this.#context.noise, this.#variances);
-    return { ...run, values: this.#variances };
   }
 }
 
-/** Variances of counts as `countVariance` gives them; no data as 0. */
+/** Variances of counts as `countVariance` gives them; no data as 0. In place where `out` is `counts`. */
 export function writeVariances(
   counts: Float64Array,
   length: number,

@@ -1,6 +1,6 @@
 /** What one pass over a slab's counts tells: totals, sums along rows, extremes, missing values. */
 import type { ScanShape } from '../scan';
-import type { TileRun } from './moment-kernels';
+import type { TileRun } from './moment-kernel';
 import type { Tile } from './tiled-counts';
 
 export interface SlabSurvey {
@@ -50,22 +50,30 @@ export class SurveyInProgress {
     this.#pixelData = isUnsigned ? null : new Uint32Array(ny * nx);
   }
 
-  add(tile: Tile, run: TileRun): void {
+  /** @param values - of the run's channels; no data is NaN */
+  add(tile: Tile, run: TileRun, values: Float64Array): void {
     const { nx } = this.#shape;
     let from = tile.first;
     while (from < tile.first + tile.pixels) {
       const row = Math.floor(from / nx);
       const to = Math.min(tile.first + tile.pixels, (row + 1) * nx);
-      if (this.pixelFlags === null) this.#addUnsigned(tile, run, row, from, to);
-      else this.#addAny(tile, run, row, from, to);
+      if (this.pixelFlags === null) this.#addUnsigned(tile, run, values, row, from, to);
+      else this.#addAny(tile, run, values, row, from, to);
       from = to;
     }
   }
 
   /** Pixels from ≤ p < to of one row. */
-  #addUnsigned(tile: Tile, run: TileRun, row: number, from: number, to: number): void {
+  #addUnsigned(
+    tile: Tile,
+    run: TileRun,
+    values: Float64Array,
+    row: number,
+    from: number,
+    to: number,
+  ): void {
     const { totals } = this;
-    const { values, pixels, k0, k1 } = run;
+    const { pixels, k0, k1 } = run;
     const { nk } = this.#shape;
     let min = this.#min;
     let max = this.#max;
@@ -86,8 +94,15 @@ export class SurveyInProgress {
     this.#max = max;
   }
 
-  #addAny(tile: Tile, run: TileRun, row: number, from: number, to: number): void {
-    const { values, pixels, k0, k1 } = run;
+  #addAny(
+    tile: Tile,
+    run: TileRun,
+    values: Float64Array,
+    row: number,
+    from: number,
+    to: number,
+  ): void {
+    const { pixels, k0, k1 } = run;
     const { nk } = this.#shape;
     for (let k = k0; k < k1; k++) {
       let at = (k - k0) * pixels + from - tile.first;

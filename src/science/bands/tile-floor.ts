@@ -1,7 +1,7 @@
 /** The line under a band with floor "ends", for the pixels of one tile. */
 import { countVariance } from '../noise';
 import type { BandPlan, FloorTerms } from './band-plan';
-import { zeroNoData } from './moment-kernels';
+import { zeroNoData } from './moment-kernel';
 import { type SlabData, writeVariances } from './slab-data';
 import { type Tile, tileChannels } from './tiled-counts';
 
@@ -142,7 +142,7 @@ export class TileFloor {
   ): void {
     const { tiled, context } = this.#data;
     const length = ends * tile.pixels;
-    tileChannels(tiled, tile, k, k + ends, counts);
+    counts.set(tileChannels(tiled, tile, k, k + ends));
     writeVariances(counts, length, context.noise, variances);
     if (!context.isUnsigned) zeroNoData(counts, length);
   }

@@ -78,7 +78,7 @@ export class TilePeak {
     const length = (k1 - k0) * pixels;
     if (this.#run.length < length) this.#run = new Float64Array(length);
     const run = this.#run;
-    tileChannels(this.#data.tiled, tile, k0, k1, run);
+    run.set(tileChannels(this.#data.tiled, tile, k0, k1));
     if (floor !== null) floor.subtractFrom(run, k0, k1);
     for (let p = 0; p < pixels; p++) {
       // Counts alike but for rounding are equal: the first stays.

@@ -70,19 +70,14 @@ function turn(from: CountsArray, to: CountsArray, { pixels, offset }: Tile, nk: 
   }
 }
 
-/**
- * Channels k0 ≤ k < k1 of one tile as doubles.
- *
- * @param out - (k1 − k0, pixels of the tile), C order; overwritten from its start
- */
+/** A view of channels k0 ≤ k < k1 of one tile: (k1 − k0, pixels of the tile), C order. */
 export function tileChannels(
   { counts }: TiledCounts,
   { offset, pixels }: Tile,
   k0: number,
   k1: number,
-  out: Float64Array,
-): void {
-  out.set(counts.subarray(offset + k0 * pixels, offset + k1 * pixels));
+): CountsArray {
+  return counts.subarray(offset + k0 * pixels, offset + k1 * pixels);
 }
 
 /** Counts of one pixel, (nk). */

@@ -3,6 +3,7 @@
  * Two ways to the same sums: channel by channel, or from moments below the band's two ends.
  */
 import type { BandPlan } from './band-plan';
+import { type EndPair, scale, sumOnce, sumTwice } from './between-edges';
 import { isCoarse } from './block-layout';
 import type { BlockSums } from './block-sums';
 import { type EdgeInProgress, type EdgeMoments, nearestEdge } from './edge-moments';
@@ -91,13 +92,10 @@ export class TileSums {
     shareEnds(values);
     this.#keep(this.#kernel.low(run, plan.energies), this.counts, pixels, 0);
     if (!wanted.variances || affine === null) return;
-    const less = { first: 1 - firstShare, last: last > first ? 1 - lastShare : 0 };
-    const ends = [values.subarray(0, pixels), values.subarray(length - pixels, length)];
-    const energies = { first: plan.energies[first], last: plan.energies[last] };
-    withSquaredShares(this.counts, ends, less, energies, pixels, this.variances);
-    if (!wanted.high) return;
+    // Squared, not taken from the sums above: a difference would lose a small share's digits.
     shareEnds(values);
-    this.#keep(this.#kernel.high(run, plan.energies), this.variances, pixels, 3);
+    this.#keep(this.#kernel.low(run, plan.energies), this.variances, pixels, 0);
+    if (wanted.high) this.#keep(this.#kernel.high(run, plan.energies), this.variances, pixels, 3);
   }
 
   /** The kernel's results are overwritten by its next. */
@@ -200,96 +198,5 @@ export class TileSums {
       const added = affine.constant * shareSquares[order];
       for (let p = 0; p < pixels; p++) plane[p] = affine.slope * plane[p] + added;
     }
-  }
-}
-
-/** A number for each of the band's two end channels. */
-interface EndPair {
-  readonly first: number;
-  readonly last: number;
-}
-
-function scale(values: Float64Array, from: number, to: number, by: number): void {
-  if (by === 1) return;
-  for (let i = from; i < to; i++) values[i] *= by;
-}
-
-/** Whole channels between two edges, and where the channels outside them lie. */
-interface Between {
-  readonly below: LowPlanes;
-  readonly above: LowPlanes;
-  readonly energies: EndPair;
-  readonly tile: Tile;
-}
-
-/** Zeroth to second moments of the whole channels and the weighted end channels. */
-function sumOnce(
-  { below: [b0, b1, b2], above: [a0, a1, a2], energies, tile }: Between,
-  [first, last]: readonly Float64Array[],
-  { first: w1, last: w2 }: EndPair,
-  [s0, s1, s2]: readonly Float64Array[],
-): void {
-  const { first: e1, last: e2 } = energies;
-  for (let p = 0; p < tile.pixels; p++) {
-    const at = tile.first + p;
-    const c1 = first[p] * w1;
-    const c2 = last[p] * w2;
-    const c1e = c1 * e1;
-    const c2e = c2 * e2;
-    s0[p] = a0[at] - b0[at] + (c1 + c2);
-    s1[p] = a1[at] - b1[at] + (c1e + c2e);
-    s2[p] = a2[at] - b2[at] + (c1e * e1 + c2e * e2);
-  }
-}
-
-/** The same with two sets of weights at once. */
-function sumTwice(
-  { below: [b0, b1, b2], above: [a0, a1, a2], energies, tile }: Between,
-  [first, last]: readonly Float64Array[],
-  { first: w1, last: w2 }: EndPair,
-  [s0, s1, s2]: readonly Float64Array[],
-  { first: x1, last: x2 }: EndPair,
-  [v0, v1, v2]: readonly Float64Array[],
-): void {
-  const { first: e1, last: e2 } = energies;
-  const ee1 = e1 * e1;
-  const ee2 = e2 * e2;
-  for (let p = 0; p < tile.pixels; p++) {
-    const at = tile.first + p;
-    const whole0 = a0[at] - b0[at];
-    const whole1 = a1[at] - b1[at];
-    const whole2 = a2[at] - b2[at];
-    const c1 = first[p] * w1;
-    const c2 = last[p] * w2;
-    s0[p] = whole0 + (c1 + c2);
-    s1[p] = whole1 + (c1 * e1 + c2 * e2);
-    s2[p] = whole2 + (c1 * ee1 + c2 * ee2);
-    const d1 = first[p] * x1;
-    const d2 = last[p] * x2;
-    v0[p] = whole0 + (d1 + d2);
-    v1[p] = whole1 + (d1 * e1 + d2 * e2);
-    v2[p] = whole2 + (d1 * ee1 + d2 * ee2);
-  }
-}
-
-/** Σ f² c eʲ from Σ f c eʲ: less (f − f²) c eʲ of the two end channels, as `ends` times `less`. */
-function withSquaredShares(
-  [s0, s1, s2]: LowPlanes,
-  [first, last]: readonly Float64Array[],
-  less: EndPair,
-  energies: EndPair,
-  pixels: number,
-  [v0, v1, v2]: readonly Float64Array[],
-): void {
-  const { first: w1, last: w2 } = less;
-  const { first: e1, last: e2 } = energies;
-  for (let p = 0; p < pixels; p++) {
-    const c1 = first[p] * w1;
-    const c2 = last[p] * w2;
-    const c1e = c1 * e1;
-    const c2e = c2 * e2;
-    v0[p] = s0[p] - (c1 + c2);
-    v1[p] = s1[p] - (c1e + c2e);
-    v2[p] = s2[p] - (c1e * e1 + c2e * e2);
   }
 }

@@ -6,7 +6,7 @@ import { countVariance } from '../noise';
 import type { EnergyAxis, NoiseModel } from '../scan';
 import { type BandQuantity, bandQuantities, type EnergyBand } from './band';
 import { type BandChannels, bandChannels, shareOf } from './band-channels';
-import { endChannels, type LineEnd, leastLeft, lineWeights } from './floor-line';
+import { endChannels, type LineEnd, leastLeft, lineWeights, nothingOf } from './floor-line';
 
 export interface BandValue {
   readonly value: number;
@@ -47,13 +47,15 @@ export function directBand(
   if (line === null) return noValues();
   const integral = integralOf(covered, line);
   const peak = peakOf(covered, line);
-  if (!(integral.value > nothingLeft(covered, line))) return { ...noValues(), integral, ...peak };
+  const gross = grossOf(covered, line);
+  const least = line === noLine ? 0 : leastLeft(gross);
+  if (!(integral.value > least)) return { ...noValues(), integral, ...peak };
   const centroid = centroidOf(covered, line, integral.value);
   return {
     integral,
     centroid,
-    median: medianOf(covered, line, integral, { counts, axis, channels }),
-    spread: spreadOf(covered, line, integral.value, centroid.value),
+    median: medianOf(covered, line, integral, { counts, axis, channels, gross }),
+    spread: spreadOf(covered, line, { integral: integral.value, centroid: centroid.value, gross }),
     ...peak,
   };
 }
@@ -149,12 +151,11 @@ function weightedSum(
   return sum;
 }
 
-/** Counts of the band that are no more than rounding of what its floor takes; 0 without one. */
-function nothingLeft(covered: readonly Channel[], line: Line): number {
-  if (line === noLine) return 0;
+/** Counts of the band and of its floor, before one is taken from the other: what rounding is measured by. */
+function grossOf(covered: readonly Channel[], line: Line): number {
   const gross = covered.reduce((sum, { share, counts }) => sum + share * counts, 0);
   const taken = covered.reduce((sum, { share, energyEv }) => sum + share * line.at(energyEv), 0);
-  return leastLeft(Math.abs(gross) + Math.abs(taken));
+  return Math.abs(gross) + Math.abs(taken);
 }
 
 /** The error of such a sum whose q does not move with the counts (or does so to second order only). */
@@ -189,16 +190,23 @@ function centroidOf(covered: readonly Channel[], line: Line, integral: number): 
   return { value, error };
 }
 
-/** ∂s²/∂c = f ((E − m)² − s²)/N: moving m does not change s² to first order. */
+/**
+ * ∂s²/∂c = f ((E − m)² − s²)/N: moving m does not change s² to first order. Of a spread of 0 there is no
+ * first order, so it has no error.
+ */
 function spreadOf(
   covered: readonly Channel[],
   line: Line,
-  integral: number,
-  centroid: number,
+  known: { readonly integral: number; readonly centroid: number; readonly gross: number },
 ): BandValue {
+  const { integral, centroid, gross } = known;
   const square = (energyEv: number): number => (energyEv - centroid) * (energyEv - centroid);
-  const squared = weightedSum(covered, line, square) / integral;
+  const moment = weightedSum(covered, line, square);
+  const halfWidth = (covered[covered.length - 1].energyEv - covered[0].energyEv) / 2;
+  const isNothing = Math.abs(moment) <= nothingOf(gross * halfWidth * halfWidth);
+  const squared = isNothing ? 0 : moment / integral;
   const value = Math.sqrt(squared);
+  if (value === 0) return { value, error: Number.NaN };
   const error = weightedSumError(covered, line, (energyEv) => square(energyEv) - squared);
   return { value, error: error / (2 * value * integral) };
 }
@@ -211,18 +219,22 @@ function medianOf(
     readonly counts: ArrayLike<number>;
     readonly axis: EnergyAxis;
     readonly channels: BandChannels;
+    readonly gross: number;
   },
 ): BandValue {
   const { edgesEv } = spectrum.axis;
   const half = integral.value / 2;
+  // Where the running sum only touches N/2, rounding must not decide whether it does.
+  const reached = half - leastLeft(spectrum.gross);
   let below = 0;
   for (const { k, share, counts, energyEv } of covered) {
     const here = share * (counts - line.at(energyEv));
     // Reached for certain: added up in this order, the whole is N > N/2.
-    if (below + here >= half) {
+    if (below + here >= reached) {
       const fromEv = Math.max(edgesEv[k], spectrum.channels.fromEv);
       const toEv = Math.min(edgesEv[k + 1], spectrum.channels.toEv);
-      const value = fromEv + ((half - below) / here) * (toEv - fromEv);
+      const share = Math.min(1, (half - below) / here);
+      const value = fromEv + share * (toEv - fromEv);
       return { value, error: (0.5 * integral.error) / densityAround(k, line, spectrum) };
     }
     below += here;

@@ -48,3 +48,13 @@ export function lineWeights(
 export function leastLeft(gross: number): number {
   return 1e-12 * gross;
 }
+
+/**
+ * What a second or fourth central moment, summed channel by channel, may be from rounding alone: such a
+ * moment is zero.
+ *
+ * @param most - what the moment would be with all counts at the band's ends
+ */
+export function nothingOf(most: number): number {
+  return most / 17592186044416;
+}

@@ -46,10 +46,11 @@ export function writeMedians(
       if (doubts[p] === 0) doubts[p] = bySpan;
       continue;
     }
-    if (!(integral > (floor === null ? 0 : leastLeft(sums.gross[p])))) continue;
+    const least = leastLeft(floor === null ? integral : sums.gross[p]);
+    if (!(integral > (floor === null ? 0 : least))) continue;
     const isRising =
       floor === null && (pixelFlags === null || (pixelFlags[at] & hasNegative) === 0);
-    if (!search.find(p, integral / 2, isRising)) {
+    if (!search.find(p, integral / 2, least, isRising)) {
       doubts[p] = byDefinition;
       continue;
     }
@@ -99,17 +100,22 @@ class MedianSearch {
     this.#sums = inside.flatMap(({ index }) => (kept === null ? [] : [kept.counts[index][0]]));
   }
 
-  /** False where rounding hides the crossing. */
-  find(pixel: number, half: number, isRising: boolean): boolean {
+  /**
+   * False where rounding hides the crossing.
+   *
+   * @param least - counts too few to decide whether the running sum touches N/2
+   */
+  find(pixel: number, half: number, least: number, isRising: boolean): boolean {
+    const reached = half - least;
     const { first, last, firstShare, lastShare } = this.#plan.channels;
     const atFirst = this.#net(pixel, first) * firstShare;
-    if (atFirst >= half) return this.#found(first, half, 0, atFirst);
-    const start = isRising ? this.#lastBelow(this.#tile.first + pixel, half - atFirst) : -1;
+    if (atFirst >= reached) return this.#found(first, half, 0, atFirst);
+    const start = isRising ? this.#lastBelow(this.#tile.first + pixel, reached - atFirst) : -1;
     let running = atFirst + (start < 0 ? 0 : this.#between(start, this.#tile.first + pixel));
     for (let k = start < 0 ? first + 1 : this.#edges[start]; k <= last; k++) {
       const counts = this.#net(pixel, k);
       const here = k === last ? counts * lastShare : counts;
-      if (running + here >= half) return this.#found(k, half, running, here);
+      if (running + here >= reached) return this.#found(k, half, running, here);
       running += here;
     }
     return false;
@@ -124,7 +130,7 @@ class MedianSearch {
 
   #found(k: number, half: number, running: number, here: number): boolean {
     this.k = k;
-    this.share = (half - running) / here;
+    this.share = Math.min(1, (half - running) / here);
     return true;
   }
 

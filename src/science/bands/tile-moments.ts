@@ -2,7 +2,7 @@
 import type { BandQuantity } from './band';
 import type { BandPlan } from './band-plan';
 import type { TileSums } from './band-sums';
-import { leastLeft } from './floor-line';
+import { leastLeft, nothingOf } from './floor-line';
 import { type Magnitudes, trusted } from './magnitudes';
 import type { TileFloor } from './tile-floor';
 import type { Tile } from './tiled-counts';
@@ -37,13 +37,10 @@ export interface MomentInputs {
 
 /** What `trusted` is for sums, for the error of a spread, a difference of fourth powers, 2⁻²²: rounding below 1e-9 of it. */
 const trustedFourth = 1 / 4194304;
-/** Of sums made channel by channel, a second or fourth central moment below 2⁻⁴⁴ of what it could be is rounding: it is zero. */
-const nothing = 1 / 17592186044416;
-
 /** The root of a variance and what a floor adds to it, which may take nearly all of it away. */
 export function errorOf(own: number, extra: number): number {
   const variance = own + extra;
-  return variance < nothing * own ? 0 : Math.sqrt(variance);
+  return variance < nothingOf(own) ? 0 : Math.sqrt(variance);
 }
 
 export function writeIntegrals(
@@ -100,7 +97,7 @@ export function writeCentroids(
     if (errors === null) continue;
     let own = v2[p] - 2 * mean * v1[p] + mean * mean * v0[p];
     if (varianceScale === null) {
-      if (own < nothing * v0[p] * square) own = 0;
+      if (own < nothingOf(v0[p] * square)) own = 0;
     } else if (!(own > slope * varianceScale[at] + constant) && doubts[p] === 0) {
       doubts[p] = bySpan;
     }
@@ -135,12 +132,12 @@ export function writeSpreads(
       }
     } else {
       const gross = floor === null ? integral : sums.gross[p];
-      if (Math.abs(squared * integral) < nothing * gross * square) squared = 0;
+      if (Math.abs(squared * integral) <= nothingOf(gross * square)) squared = 0;
     }
     if (!isThere) continue;
     const spread = Math.sqrt(squared);
     values[at] = spread;
-    if (errors === null) continue;
+    if (errors === null || spread === 0) continue;
     const second = v2[p] - 2 * mean * v1[p] + meanSquare * v0[p];
     const fourth =
       v4[p] -
@@ -150,7 +147,7 @@ export function writeSpreads(
       meanSquare * meanSquare * v0[p];
     let own = fourth - 2 * squared * second + squared * squared * v0[p];
     if (magnitudes === null) {
-      if (own < nothing * v0[p] * square * square) own = 0;
+      if (own < nothingOf(v0[p] * square * square)) own = 0;
     } else {
       const scale = magnitudes.slope * magnitudes.variances[at] + magnitudes.constant;
       if (!(own > trustedFourth * scale * square * square) && doubts[p] === 0) doubts[p] = bySpan;

@@ -52,6 +52,7 @@ function momentExports(): MomentExports | null {
 
 /** Memory, in doubles: three planes of results, the energies, the input, and 16-bit counts on their way into it. */
 class WasmKernel implements MomentKernel {
+  readonly kind = 'vectors';
   readonly #exports: MomentExports;
   /** length of a plane, with room for what the last turn writes too many */
   readonly #plane: number;

@@ -24,6 +24,7 @@ export type HighPlanes = readonly [Float64Array, Float64Array];
  * on which pixels are neighbours.
  */
 export interface MomentKernel {
+  readonly kind: 'plain' | 'vectors';
   /** Fills the input with counts, as doubles. The view given back may be changed, and is valid until the next call. */
   fill(counts: CountsArray): Float64Array;
   /** Σ v, Σ v e and Σ v e² of the run in the input. The planes are at least as long as the run has pixels, and valid until the next call. */
@@ -39,6 +40,7 @@ export function createPlainKernel(tilePixels: number): MomentKernel {
   const highs: HighPlanes = [plane(), plane()];
   let input = new Float64Array(0);
   return {
+    kind: 'plain',
     fill: (counts) => {
       if (input.length < counts.length) input = new Float64Array(counts.length);
       input.set(counts);

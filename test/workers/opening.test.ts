@@ -2,7 +2,7 @@
 import { describe, expect, it } from 'vitest';
 import { RimlightError } from '../../src/errors';
 import { encodeNpy } from '../../src/io/write/npy';
-import type { ToByteSource } from '../../workers/file-access';
+import { type ToByteSource, withCompanions, withContainer } from '../../workers/file-access';
 import { createScanEngine } from '../../workers/pool';
 import { portableSource } from '../../workers/portable-source';
 import { errorOf } from './engine.contract';
@@ -43,6 +43,8 @@ describe('a scan of which one slab cannot be loaded', () => {
       hint: 'Copy it again.',
     });
     expect(leftBehind(workers).slice(0, 2)).toEqual([1, 1]);
+    // The others need not go on.
+    expect(workers.all[0].called).toContain('cancel');
     expect(await answersOf(scan)).toStrictEqual(before);
     await engine.close();
   });
@@ -153,6 +155,43 @@ describe('a stop', () => {
     expect(await errorOf(hashing)).toMatchObject({ kind: 'cancelled' });
     expect(shares.at(-1)).toBeLessThan(1);
     await engine.close();
+  });
+});
+
+describe('a file', () => {
+  const handle = makeScan().inputs.scan;
+
+  it('is read no further once stopped, and closed', async () => {
+    const stopper = new AbortController();
+    let isClosed = false;
+    const watched: ToByteSource = async (one) => ({
+      ...(await portableSource(one)),
+      close: () => {
+        isClosed = true;
+      },
+    });
+    const use = withContainer(watched, handle, stopper.signal, async (container) => {
+      const [entry] = container.entries;
+      stopper.abort();
+      return container.read(
+        entry.path,
+        entry.shape.map(() => 0),
+        entry.shape,
+      );
+    });
+    expect(await errorOf(use)).toMatchObject({ kind: 'cancelled' });
+    expect(isClosed).toBe(true);
+  });
+
+  it('beside the scan that cannot be opened is left out with a word', async () => {
+    const junk = { kind: 'memory' as const, name: 'junk.h5', bytes: Uint8Array.of(1, 2, 3) };
+    const { signal } = new AbortController();
+    const found = await withCompanions(portableSource, [junk, handle], signal, async (opened) => ({
+      names: opened.companions.map(({ name }) => name),
+      warnings: opened.warnings,
+    }));
+    expect(found.names).toEqual([handle.name]);
+    expect(found.warnings).toEqual([expect.stringMatching(/^junk\.h5 is left out: .+/)]);
   });
 });
 

@@ -1,0 +1,167 @@
+/** The spectra themselves: pins and mean by the plotting library, the hovered pixel on a canvas above it. */
+import { scaleLinear, scaleLog, type ScaleLinear } from 'd3-scale';
+import { useEffect, useMemo, useRef, useState } from 'react';
+import { pinColour } from '../map/pin-styles';
+import { readTokens } from '../read-tokens';
+import { useSession, useSpectra, useView, useWorkbench } from '../workbench-context';
+import { countsLimits } from './counts-scale';
+import styles from './energy-panel.module.css';
+import { panelLayout } from './panel-layout';
+import { clearCanvas, drawLine, fitCanvas } from './line-canvas';
+import { loadPlotLibrary } from './plotting-library';
+import { createSpectrumPlot, type SpectrumLine, type SpectrumPlot } from './spectrum-plot';
+
+interface Props {
+  readonly evToX: ScaleLinear<number, number>;
+  readonly widthPx: number;
+  readonly heightPx: number;
+}
+
+export function SpectrumView({ evToX, widthPx, heightPx }: Props): React.JSX.Element {
+  const { spectra } = useWorkbench();
+  const theme = useView((view) => view.theme);
+  const isLog = useView((view) => view.logCounts);
+  const scan = useSession((session) => session.scan);
+  const pins = useSpectra((state) => state.pins);
+  const plotHost = useRef<HTMLDivElement>(null);
+  const hoverCanvas = useRef<HTMLCanvasElement>(null);
+  const [plot, setPlot] = useState<SpectrumPlot | null>(null);
+
+  const overview = scan?.open.overview ?? null;
+  const axis = overview?.meta.axis ?? null;
+  const [fromEv = 0, toEv = 1] = evToX.domain();
+  const channels = useMemo(
+    () => (axis === null ? { from: 0, to: 0 } : channelsWithin(axis.centresEv, fromEv, toEv)),
+    [axis, fromEv, toEv],
+  );
+  const hoveredTop = useSpectra((state) => roundTop(state.hovered?.counts, channels));
+
+  const lines = useMemo((): readonly SpectrumLine[] => {
+    if (overview === null) return [];
+    const energiesEv = overview.meta.axis.centresEv;
+    const tokens = readTokens(theme);
+    const mean = {
+      name: 'mean of the scan',
+      energiesEv,
+      counts: overview.meanSpectrum,
+      colour: tokens.ink3,
+      widthPx: 1,
+    };
+    const pinned = [...pins].map(([name, { counts }]) => ({
+      name: `pin ${name}`,
+      energiesEv,
+      counts,
+      colour: pinColour(name),
+      widthPx: 1.2,
+    }));
+    return [mean, ...pinned];
+  }, [overview, pins, theme]);
+
+  const limits = useMemo(() => {
+    const { low, high } = countsLimits(lines.map((line) => line.counts), channels, isLog);
+    return { low, high: Math.max(high, hoveredTop) };
+  }, [lines, channels, isLog, hoveredTop]);
+
+  useEffect(() => {
+    const host = plotHost.current;
+    if (host === null) return;
+    let made: SpectrumPlot | null = null;
+    let isGone = false;
+    void loadPlotLibrary().then((library) => {
+      if (isGone) return;
+      made = createSpectrumPlot(host, library);
+      setPlot(made);
+    });
+    return () => {
+      isGone = true;
+      made?.destroy();
+    };
+  }, []);
+
+  useEffect(() => {
+    const tokens = readTokens(theme);
+    plot?.update(lines, {
+      widthPx,
+      heightPx,
+      marginPx: {
+        l: panelLayout.leftPx,
+        r: panelLayout.rightPx,
+        t: panelLayout.plotTopPx,
+        b: panelLayout.bottomPx,
+      },
+      energyRange: [fromEv, toEv],
+      countsRange: [limits.low, limits.high],
+      isLog,
+      ink: tokens.ink2,
+      grid: tokens.grid,
+      font: tokens.mono,
+    });
+  }, [plot, lines, limits, fromEv, toEv, widthPx, heightPx, isLog, theme]);
+
+  useEffect(() => {
+    const canvas = hoverCanvas.current;
+    if (canvas === null || axis === null) return;
+    const range: [number, number] = [heightPx - panelLayout.bottomPx, panelLayout.plotTopPx];
+    const countsToY = (isLog ? scaleLog : scaleLinear)([limits.low, limits.high], range).clamp(true);
+    const xsPx = axis.centresEv.map((energy) => evToX(energy));
+    const colour = readTokens(theme).ink;
+    const draw = (): void => {
+      fitCanvas(canvas, widthPx, heightPx);
+      clearCanvas(canvas);
+      const { hovered } = spectra.getState();
+      if (hovered === null) return;
+      const yOf = (counts: number): number => (isLog && counts <= 0 ? range[0] : countsToY(counts));
+      drawLine(canvas, xsPx, yOf, hovered.counts, { colour, widthPx: 1.2 });
+    };
+    draw();
+    return spectra.subscribe((now, before) => {
+      if (now.hovered !== before.hovered) draw();
+    });
+  }, [axis, evToX, limits, widthPx, heightPx, isLog, theme, spectra]);
+
+  const plotBox = {
+    left: panelLayout.leftPx,
+    right: panelLayout.rightPx,
+    top: panelLayout.plotTopPx,
+    bottom: panelLayout.bottomPx,
+  };
+  return (
+    <>
+      <div className={styles.ground} style={plotBox} />
+      <div className={styles.plot} ref={plotHost} data-testid="spectrum-plot" />
+      <canvas
+        className={styles.hover}
+        ref={hoverCanvas}
+        style={{ width: widthPx, height: heightPx, clipPath: clipOf(plotBox) }}
+        aria-hidden="true"
+      />
+      <span className={styles.unit} style={{ top: panelLayout.plotTopPx + 6 }}>
+        {overview?.meta.quantity ?? 'counts'} / channel
+      </span>
+      <span className={styles.caption}>photon energy (eV)</span>
+    </>
+  );
+}
+
+function clipOf(box: { left: number; right: number; top: number; bottom: number }): string {
+  return `inset(${box.top}px ${box.right}px ${box.bottom}px ${box.left}px)`;
+}
+
+/** A round limit above the hovered counts in view, so that the axis is drawn anew only when it must grow. */
+function roundTop(counts: Float64Array | undefined, channels: ChannelRange): number {
+  if (counts === undefined) return 0;
+  return countsLimits([counts], channels, false).high;
+}
+
+interface ChannelRange {
+  readonly from: number;
+  readonly to: number;
+}
+
+function channelsWithin(centresEv: Float64Array, fromEv: number, toEv: number): ChannelRange {
+  let from = 0;
+  while (from < centresEv.length && (centresEv[from] ?? 0) < fromEv) from++;
+  let to = from;
+  while (to < centresEv.length && (centresEv[to] ?? 0) <= toEv) to++;
+  return { from, to };
+}

@@ -4,9 +4,9 @@
  * that it comes back whenever that scan is opened again.
  */
 import type { ScanInputs, SourceHandle } from '../../workers/engine';
+import type { Recipe } from '../recipe/schema';
 import { serialiseRecipe } from '../recipe/serialise';
 import { parseRecipe } from '../recipe/validate';
-import type { Recipe } from '../recipe/schema';
 import type { Workbench } from './workbench';
 
 /** Key–value storage of the browser; tests give one in memory. */
@@ -32,7 +32,11 @@ const recipeKeyOf = (sha256: string): string => `recipe-${sha256}`;
 const largestKeptBytes = 256 * 2 ** 20;
 const waitMs = 300;
 
-export function startAutosave(workbench: Workbench, storage: WorkStorage, now: () => Date): () => void {
+export function startAutosave(
+  workbench: Workbench,
+  storage: WorkStorage,
+  now: () => Date,
+): () => void {
   const { session, recipe, notices } = workbench;
   let timer: ReturnType<typeof setTimeout> | null = null;
   let hasFailed = false;
@@ -61,7 +65,10 @@ export function startAutosave(workbench: Workbench, storage: WorkStorage, now: (
       url: scan.url,
     };
     await storage.set(lastWorkKey, work);
-    if (sha256 !== null) await storage.set(recipeKeyOf(sha256), work);
+    // A recipe nobody has touched must not take the place of the one kept from an earlier visit.
+    const { past, future } = recipe.getState();
+    const isTouched = past.length + future.length > 0;
+    if (sha256 !== null && isTouched) await storage.set(recipeKeyOf(sha256), work);
   };
 
   const schedule = (): void => {
@@ -94,14 +101,17 @@ export function startAutosave(workbench: Workbench, storage: WorkStorage, now: (
 }
 
 /** What the last visit left; null when there is nothing or it cannot be read any more. */
-export async function loadLastWork(
-  storage: WorkStorage,
-): Promise<{ readonly work: SavedWork; readonly recipe: Recipe; readonly inputs: ScanInputs | null } | null> {
+export async function loadLastWork(storage: WorkStorage): Promise<{
+  readonly work: SavedWork;
+  readonly recipe: Recipe;
+  readonly inputs: ScanInputs | null;
+} | null> {
   const work = asSavedWork(await storage.get(lastWorkKey));
   if (work === null) return null;
   const parsed = parseRecipe(work.recipeText);
   if (!parsed.ok) return null;
-  const inputs = work.url === null ? ((await storage.get(lastInputsKey)) as ScanInputs | null) : null;
+  const inputs =
+    work.url === null ? ((await storage.get(lastInputsKey)) as ScanInputs | null) : null;
   return { work, recipe: parsed.recipe, inputs: inputs ?? null };
 }
 
@@ -119,7 +129,9 @@ export async function loadRecipeFor(
 function asSavedWork(value: unknown): SavedWork | null {
   if (typeof value !== 'object' || value === null) return null;
   const { recipeText, scanName } = value as Partial<SavedWork>;
-  return typeof recipeText === 'string' && typeof scanName === 'string' ? (value as SavedWork) : null;
+  return typeof recipeText === 'string' && typeof scanName === 'string'
+    ? (value as SavedWork)
+    : null;
 }
 
 function sizeOf(source: SourceHandle): number {

@@ -1,9 +1,16 @@
 /** What the user does to bands, each one edit of the recipe. */
 import { energyToBandUnit } from '../recipe/band-energies';
-import { addBand, moveBandEdges, nextBandName, removeBand, renameBand, setBandFloor } from '../recipe/edits';
+import {
+  addBand,
+  moveBandEdges,
+  nextBandName,
+  removeBand,
+  renameBand,
+  setBandFloor,
+} from '../recipe/edits';
+import { parseMapName } from '../recipe/map-names';
 import type { RecipeBand } from '../recipe/schema';
 import type { BandFloor } from '../science/bands/band';
-import { parseMapName } from '../recipe/map-names';
 import type { Workbench } from './workbench';
 
 export function selectBand({ view }: Workbench, name: string): void {
@@ -15,7 +22,9 @@ export function addBandBetween(workbench: Workbench, oneEv: number, otherEv: num
   const name = nextBandName(workbench.recipe.getState().recipe);
   const from = rounded(Math.min(oneEv, otherEv), 'eV');
   const to = rounded(Math.max(oneEv, otherEv), 'eV');
-  workbench.recipe.edit(`Add band ${name}`, (recipe) => addBand(recipe, { name, from, to, unit: 'eV' }));
+  workbench.recipe.edit(`Add band ${name}`, (recipe) =>
+    addBand(recipe, { name, from, to, unit: 'eV' }),
+  );
   selectBand(workbench, name);
 }
 

@@ -36,7 +36,13 @@ export function followBands(workbench: Workbench): () => void {
     for (const band of document.bands ?? []) {
       const energies = energiesOf(band, document, scan);
       if (energies !== null) {
-        follow(scan, scanNumber, band, energies, wantedQuantities(band.name, document, view.getState().leadMap));
+        follow(
+          scan,
+          scanNumber,
+          band,
+          energies,
+          wantedQuantities(band.name, document, view.getState().leadMap),
+        );
       }
     }
   };
@@ -116,7 +122,11 @@ export function followBands(workbench: Workbench): () => void {
 }
 
 /** The quantities of one band that something on screen or in the recipe shows. */
-function wantedQuantities(name: string, document: Recipe, leadMap: string): readonly BandQuantity[] {
+function wantedQuantities(
+  name: string,
+  document: Recipe,
+  leadMap: string,
+): readonly BandQuantity[] {
   const wanted = new Set<BandQuantity>(always);
   const sources = [leadMap, ...(document.blend?.channels ?? []).map((channel) => channel.source)];
   for (const source of sources) {

@@ -20,7 +20,8 @@ export function followSpectra(workbench: Workbench): () => void {
     }
     hover.run(async () => {
       const counts = await scan.open.spectrum(pixel);
-      if (session.getState().scanNumber === scanNumber) spectra.setState({ hovered: { pixel, counts } });
+      if (session.getState().scanNumber === scanNumber)
+        spectra.setState({ hovered: { pixel, counts } });
     }, notices.sayError);
   };
 

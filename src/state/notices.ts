@@ -22,7 +22,11 @@ export interface NoticesState {
 }
 
 export interface Notices extends StoreApi<NoticesState> {
-  say(tone: Notice['tone'], text: string, options?: { hint?: string; action?: NoticeAction }): number;
+  say(
+    tone: Notice['tone'],
+    text: string,
+    options?: { hint?: string; action?: NoticeAction },
+  ): number;
   /** Any thrown value; what the user stopped is not worth a notice. */
   sayError(error: unknown): void;
   dismiss(id: number): void;

@@ -17,7 +17,11 @@ import type { Workbench } from './workbench';
 const looking: LatestWins = createLatestWins();
 
 /** Opens the import sheet on files the user gave; `recipe` is one dropped together with the scan. */
-export function beginImport(workbench: Workbench, inputs: ScanInputs, recipe: Recipe | null = null): void {
+export function beginImport(
+  workbench: Workbench,
+  inputs: ScanInputs,
+  recipe: Recipe | null = null,
+): void {
   const choices: ScanChoices = recipe?.scan ?? {};
   workbench.session.setState({
     draft: { inputs, choices, recipe, inspection: null, preview: null, isRevision: false },
@@ -31,7 +35,14 @@ export function reviseImport(workbench: Workbench): void {
   if (scan === null) return;
   const choices = workbench.recipe.getState().recipe.scan ?? {};
   workbench.session.setState({
-    draft: { inputs: scan.inputs, choices, recipe: null, inspection: null, preview: null, isRevision: true },
+    draft: {
+      inputs: scan.inputs,
+      choices,
+      recipe: null,
+      inspection: null,
+      preview: null,
+      isRevision: true,
+    },
   });
   lookAtDraft(workbench);
 }
@@ -40,7 +51,9 @@ export function reviseImport(workbench: Workbench): void {
 export function stateChoices(workbench: Workbench, stated: ScanChoices): void {
   const { draft } = workbench.session.getState();
   if (draft === null) return;
-  workbench.session.setState({ draft: { ...draft, choices: mergeScanChoices(draft.choices, stated) } });
+  workbench.session.setState({
+    draft: { ...draft, choices: mergeScanChoices(draft.choices, stated) },
+  });
   lookAtDraft(workbench);
 }
 
@@ -94,7 +107,9 @@ export async function acceptImport(workbench: Workbench): Promise<void> {
   if (draft.isRevision) {
     const { scan } = workbench.session.getState();
     if (scan !== null) workbench.session.setState({ scan: { ...scan, inputs: draft.inputs } });
-    workbench.recipe.edit('Correct how the scan is read', (recipe) => setScanChoices(recipe, plan.resolved));
+    workbench.recipe.edit('Correct how the scan is read', (recipe) =>
+      setScanChoices(recipe, plan.resolved),
+    );
     return;
   }
   const base = draft.recipe;
@@ -126,7 +141,10 @@ export async function openOffered(
     inputs,
     plan,
     url,
-    recipeFor: (open) => recipe ?? startingRecipe(open.overview, plan.resolved),
+    recipeFor: (open) =>
+      recipe === null
+        ? startingRecipe(open.overview, plan.resolved)
+        : setScanChoices(recipe, plan.resolved),
   });
 }
 
@@ -152,7 +170,10 @@ export async function openScan(workbench: Workbench, request: OpenRequest): Prom
   };
   report(0);
   try {
-    const open = await engine.open(request.inputs, request.plan, { signal: stopper.signal, onProgress: report });
+    const open = await engine.open(request.inputs, request.plan, {
+      signal: stopper.signal,
+      onProgress: report,
+    });
     const before = session.getState();
     const { overview } = open;
     results.clear();

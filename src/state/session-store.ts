@@ -1,8 +1,8 @@
 /** The scan on screen, the one being opened, and how far that is. */
 import { createStore, type StoreApi } from 'zustand/vanilla';
 import type { OpenScan, ScanInputs } from '../../workers/engine';
-import type { Inspection, Preview } from '../io/scan-plan';
 import type { ScanChoices } from '../io/scan-choices';
+import type { Inspection, Preview } from '../io/scan-plan';
 import type { Recipe } from '../recipe/schema';
 
 /** An import sheet in progress; the scan on screen stays until it is accepted. */

@@ -1,7 +1,7 @@
 /** Everything the screen stands on, made once: the engine, the stores, and what keeps them in step. */
 import type { ScanEngine } from '../../workers/engine';
 import { emptyRecipe } from '../recipe/defaults';
-import { createCrosshair, type Crosshair } from './crosshair';
+import { type Crosshair, createCrosshair } from './crosshair';
 import { followBands } from './follow-bands';
 import { followScanBlock } from './follow-scan-block';
 import { followSpectra } from './follow-spectra';

@@ -33,7 +33,11 @@ export function EnergyPanel(): React.JSX.Element {
   const [fromEv, toEv] = shown ?? whole;
   const { widthPx, heightPx } = size;
   const evToX = useMemo(
-    () => scaleLinear([fromEv, toEv], [panelLayout.leftPx, Math.max(widthPx - panelLayout.rightPx, panelLayout.leftPx + 1)]),
+    () =>
+      scaleLinear(
+        [fromEv, toEv],
+        [panelLayout.leftPx, Math.max(widthPx - panelLayout.rightPx, panelLayout.leftPx + 1)],
+      ),
     [fromEv, toEv, widthPx],
   );
 
@@ -49,7 +53,8 @@ export function EnergyPanel(): React.JSX.Element {
       const low = Math.max(whole[0], centre - (centre - fromEv) * factor);
       const high = Math.min(whole[1], centre + (toEv - centre) * factor);
       const isWhole = low <= whole[0] && high >= whole[1];
-      if (high - low > (whole[1] - whole[0]) / 400) view.setState({ energyRange: isWhole ? null : [low, high] });
+      if (high - low > (whole[1] - whole[0]) / 400)
+        view.setState({ energyRange: isWhole ? null : [low, high] });
     };
     element.addEventListener('wheel', zoom, { passive: false });
     return () => element.removeEventListener('wheel', zoom);

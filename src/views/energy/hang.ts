@@ -32,7 +32,10 @@ export function hangTiles({ centresPx, slotPx, fromPx, toPx }: HangRequest): rea
 }
 
 /** The tie from under a tile to its interval: down, across, down. */
-export function tiePath(tile: { x: number; y: number }, interval: { x: number; y: number }): string {
+export function tiePath(
+  tile: { x: number; y: number },
+  interval: { x: number; y: number },
+): string {
   const drop = (interval.y - tile.y) * 0.75;
   return `M${tile.x} ${tile.y} C ${tile.x} ${tile.y + drop}, ${interval.x} ${interval.y - drop}, ${interval.x} ${interval.y}`;
 }

@@ -42,13 +42,23 @@ export function HungMaps({ evToX, widthPx }: Props): React.JSX.Element {
   const lefts = hangTiles({ centresPx: middles, slotPx, fromPx, toPx });
   return (
     <>
-      <svg className={styles.ties} width={widthPx} height={panelLayout.plotTopPx} aria-hidden="true">
+      <svg
+        className={styles.ties}
+        width={widthPx}
+        height={panelLayout.plotTopPx}
+        aria-hidden="true"
+      >
         {bands.map((band, index) => {
           const middle = middles[index] ?? 0;
           if (middle < fromPx || middle > toPx) return null;
-          const tile = { x: (lefts[index] ?? 0) + tilePx / 2, y: panelLayout.tileTopPx + tilePx + 2 };
+          const tile = {
+            x: (lefts[index] ?? 0) + tilePx / 2,
+            y: panelLayout.tileTopPx + tilePx + 2,
+          };
           const d = tiePath(tile, { x: middle, y: panelLayout.plotTopPx });
-          return <path key={band.name} className={styles.tie} d={d} stroke={colours.get(band.name)} />;
+          return (
+            <path key={band.name} className={styles.tie} d={d} stroke={colours.get(band.name)} />
+          );
         })}
       </svg>
       {bands.map((band, index) => (

@@ -17,7 +17,12 @@ export interface SpectrumLine {
 export interface SpectrumFrame {
   readonly widthPx: number;
   readonly heightPx: number;
-  readonly marginPx: { readonly l: number; readonly r: number; readonly t: number; readonly b: number };
+  readonly marginPx: {
+    readonly l: number;
+    readonly r: number;
+    readonly t: number;
+    readonly b: number;
+  };
   readonly energyRange: readonly [number, number];
   readonly countsRange: readonly [number, number];
   readonly isLog: boolean;
@@ -35,7 +40,11 @@ export function createSpectrumPlot(host: HTMLElement, library: PlotLibrary): Spe
   let isAlive = true;
   return {
     update(lines, frame) {
-      if (isAlive) void library.react(host, lines.map(asTrace), layoutOf(frame), { staticPlot: true, responsive: false });
+      if (isAlive)
+        void library.react(host, lines.map(asTrace), layoutOf(frame), {
+          staticPlot: true,
+          responsive: false,
+        });
     },
     destroy() {
       isAlive = false;
@@ -78,7 +87,11 @@ function layoutOf(frame: SpectrumFrame): Record<string, unknown> {
     showlegend: false,
     dragmode: false,
     hovermode: false,
-    xaxis: { ...axis, range: [...frame.energyRange], nticks: Math.max(3, Math.round(frame.widthPx / 110)) },
+    xaxis: {
+      ...axis,
+      range: [...frame.energyRange],
+      nticks: Math.max(3, Math.round(frame.widthPx / 110)),
+    },
     yaxis: {
       ...axis,
       type: frame.isLog ? 'log' : 'linear',

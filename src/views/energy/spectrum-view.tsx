@@ -1,13 +1,13 @@
 /** The spectra themselves: pins and mean by the plotting library, the hovered pixel on a canvas above it. */
-import { scaleLinear, scaleLog, type ScaleLinear } from 'd3-scale';
+import { type ScaleLinear, scaleLinear, scaleLog } from 'd3-scale';
 import { useEffect, useMemo, useRef, useState } from 'react';
 import { pinColour } from '../map/pin-styles';
 import { readTokens } from '../read-tokens';
 import { useSession, useSpectra, useView, useWorkbench } from '../workbench-context';
 import { countsLimits } from './counts-scale';
 import styles from './energy-panel.module.css';
-import { panelLayout } from './panel-layout';
 import { clearCanvas, drawLine, fitCanvas } from './line-canvas';
+import { panelLayout } from './panel-layout';
 import { loadPlotLibrary } from './plotting-library';
 import { createSpectrumPlot, type SpectrumLine, type SpectrumPlot } from './spectrum-plot';
 
@@ -58,7 +58,11 @@ export function SpectrumView({ evToX, widthPx, heightPx }: Props): React.JSX.Ele
   }, [overview, pins, theme]);
 
   const limits = useMemo(() => {
-    const { low, high } = countsLimits(lines.map((line) => line.counts), channels, isLog);
+    const { low, high } = countsLimits(
+      lines.map((line) => line.counts),
+      channels,
+      isLog,
+    );
     return { low, high: Math.max(high, hoveredTop) };
   }, [lines, channels, isLog, hoveredTop]);
 
@@ -102,7 +106,9 @@ export function SpectrumView({ evToX, widthPx, heightPx }: Props): React.JSX.Ele
     const canvas = hoverCanvas.current;
     if (canvas === null || axis === null) return;
     const range: [number, number] = [heightPx - panelLayout.bottomPx, panelLayout.plotTopPx];
-    const countsToY = (isLog ? scaleLog : scaleLinear)([limits.low, limits.high], range).clamp(true);
+    const countsToY = (isLog ? scaleLog : scaleLinear)([limits.low, limits.high], range).clamp(
+      true,
+    );
     const xsPx = axis.centresEv.map((energy) => evToX(energy));
     const colour = readTokens(theme).ink;
     const draw = (): void => {
@@ -133,7 +139,6 @@ export function SpectrumView({ evToX, widthPx, heightPx }: Props): React.JSX.Ele
         className={styles.hover}
         ref={hoverCanvas}
         style={{ width: widthPx, height: heightPx, clipPath: clipOf(plotBox) }}
-        aria-hidden="true"
       />
       <span className={styles.unit} style={{ top: panelLayout.plotTopPx + 6 }}>
         {overview?.meta.quantity ?? 'counts'} / channel

@@ -1,0 +1,54 @@
+/** What is known of one pixel, as rows of the values column. */
+import type { Pixel } from '../../workers/engine';
+import { parseMapName } from '../recipe/map-names';
+import type { DerivedMap } from '../science/scan';
+
+export interface ValueRow {
+  /** contract name of the map */
+  readonly name: string;
+  /** "tail centroid" */
+  readonly label: string;
+  readonly value: number;
+  /** 1-σ; null where there is none */
+  readonly error: number | null;
+  readonly unit: string;
+}
+
+/** Values of every map at a pixel, in the order given; a pixel outside has none. */
+export function valuesAt(maps: readonly DerivedMap[], { y, x }: Pixel): readonly ValueRow[] {
+  return maps.flatMap((map) => {
+    if (y < 0 || y >= map.ny || x < 0 || x >= map.nx) return [];
+    const index = y * map.nx + x;
+    const error = map.errors?.[index] ?? null;
+    const value = map.values[index] ?? Number.NaN;
+    return [{ name: map.name, label: labelOf(map.name), value, error, unit: map.unit }];
+  });
+}
+
+const quantityWords: Readonly<Record<string, string>> = {
+  integral: 'counts',
+  peak: 'highest channel',
+  peak_at: 'energy of highest',
+};
+
+/** A map's name in the few words of a narrow column. */
+export function labelOf(name: string): string {
+  const parsed = parseMapName(name);
+  if (parsed === null) return name;
+  switch (parsed.kind) {
+    case 'scan':
+      return parsed.quantity === 'total' ? 'all channels' : 'height';
+    case 'band':
+      return `${parsed.band} ${quantityWords[parsed.quantity] ?? parsed.quantity}`;
+    case 'fit':
+      return `${parsed.component} ${parsed.parameter}`;
+    case 'fit-quality':
+      return parsed.quantity === 'chi2r' ? 'χ² reduced' : `fit ${parsed.quantity}`;
+    case 'strain':
+      return parsed.method === 'pl' ? 'strain from PL' : 'strain from Raman';
+    case 'strain-height':
+      return `strain ${parsed.component}`;
+    case 'despike':
+      return 'spikes';
+  }
+}

@@ -1,0 +1,54 @@
+/** Every value at one pixel with its uncertainty: under the crosshair, else at the pin made last. */
+import { useMemo } from 'react';
+import { formatMeasured } from '../../science/format';
+import { type ValueRow, valuesAt } from '../../state/cursor-values';
+import { shownMaps } from '../../state/shown-maps';
+import { useCrosshair, useRecipe, useResults } from '../workbench-context';
+import styles from './values-column.module.css';
+
+export function PixelValues(): React.JSX.Element {
+  const hovered = useCrosshair();
+  const recipe = useRecipe((document) => document);
+  const results = useResults((state) => state.maps);
+  const maps = useMemo(() => shownMaps(recipe, results), [recipe, results]);
+  const lastPin = recipe.pins?.at(-1);
+  const pixel = hovered ?? lastPin ?? null;
+  if (pixel === null || maps.length === 0) {
+    return (
+      <section className={styles.section}>
+        <h2 className={styles.heading}>Values</h2>
+        <p className={styles.hint}>Point at a map to read every value there.</p>
+      </section>
+    );
+  }
+  const pin = recipe.pins?.find(({ x, y }) => x === pixel.x && y === pixel.y);
+  return (
+    <section className={styles.section} data-testid="values">
+      <h2 className={styles.heading}>
+        <b>
+          Pixel {pixel.x}, {pixel.y}
+        </b>
+        <span>{pin === undefined ? '' : `${pin.name} ${pin.label ?? ''}`}</span>
+      </h2>
+      <dl className={styles.rows}>
+        {valuesAt(maps, pixel).map((row) => (
+          <Row key={row.name} row={row} />
+        ))}
+      </dl>
+    </section>
+  );
+}
+
+function Row({ row }: { readonly row: ValueRow }): React.JSX.Element {
+  const text = formatMeasured(row.value, row.error, row.unit);
+  const [value, ...rest] = text.split(/(?= [±\p{L}%°])/u);
+  return (
+    <div className={styles.row} data-map={row.name}>
+      <dt>{row.label}</dt>
+      <dd>
+        {value}
+        <i>{rest.join('')}</i>
+      </dd>
+    </div>
+  );
+}

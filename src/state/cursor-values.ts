@@ -1,7 +1,9 @@
 /** What is known of one pixel, as rows of the values column. */
 import type { Pixel } from '../../workers/engine';
 import { parseMapName } from '../recipe/map-names';
+import type { Recipe } from '../recipe/schema';
 import type { DerivedMap } from '../science/scan';
+import { cm1FromEv, shiftCm1FromEv } from '../science/units';
 
 export interface ValueRow {
   /** contract name of the map */
@@ -22,6 +24,34 @@ export function valuesAt(maps: readonly DerivedMap[], { y, x }: Pixel): readonly
     const error = map.errors?.[index] ?? null;
     const value = map.values[index] ?? Number.NaN;
     return [{ name: map.name, label: labelOf(map.name), value, error, unit: map.unit }];
+  });
+}
+
+const energies: ReadonlySet<string> = new Set(['centroid', 'median', 'peak_at']);
+
+/**
+ * Energies of bands that the recipe gives as Raman shifts, as shifts too; everything else unchanged.
+ *
+ * @param laserEv - photon energy of the laser; null leaves all in eV
+ */
+export function withShifts(
+  rows: readonly ValueRow[],
+  recipe: Recipe,
+  laserEv: number | null,
+): readonly ValueRow[] {
+  if (laserEv === null) return rows;
+  const bands = recipe.bands ?? [];
+  const raman = new Set(bands.filter(({ unit }) => unit === 'cm-1').map(({ name }) => name));
+  return rows.map((row) => {
+    const parsed = parseMapName(row.name);
+    if (parsed?.kind !== 'band' || !raman.has(parsed.band)) return row;
+    const error = row.error === null ? null : cm1FromEv(row.error);
+    if (energies.has(parsed.quantity)) {
+      return { ...row, value: shiftCm1FromEv(row.value, laserEv), error, unit: 'cm-1' };
+    }
+    return parsed.quantity === 'spread'
+      ? { ...row, value: cm1FromEv(row.value), error, unit: 'cm-1' }
+      : row;
   });
 }
 

@@ -1,15 +1,16 @@
 /** Every value at one pixel with its uncertainty: under the crosshair, else at the pin made last. */
 import { useMemo } from 'react';
 import { formatMeasured } from '../../science/format';
-import { type ValueRow, valuesAt } from '../../state/cursor-values';
+import { type ValueRow, valuesAt, withShifts } from '../../state/cursor-values';
 import { shownMaps } from '../../state/shown-maps';
-import { useCrosshair, useRecipe, useResults } from '../workbench-context';
+import { useCrosshair, useRecipe, useResults, useSession } from '../workbench-context';
 import styles from './values-column.module.css';
 
 export function PixelValues(): React.JSX.Element {
   const hovered = useCrosshair();
   const recipe = useRecipe((document) => document);
   const results = useResults((state) => state.maps);
+  const laserEv = useSession(({ scan }) => scan?.open.plan.meta.laserEv ?? null);
   const maps = useMemo(() => shownMaps(recipe, results), [recipe, results]);
   const lastPin = recipe.pins?.at(-1);
   const pixel = hovered ?? lastPin ?? null;
@@ -31,7 +32,7 @@ export function PixelValues(): React.JSX.Element {
         <span>{pin === undefined ? '' : `${pin.name} ${pin.label ?? ''}`}</span>
       </h2>
       <dl className={styles.rows}>
-        {valuesAt(maps, pixel).map((row) => (
+        {withShifts(valuesAt(maps, pixel), recipe, laserEv).map((row) => (
           <Row key={row.name} row={row} />
         ))}
       </dl>

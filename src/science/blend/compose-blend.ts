@@ -49,7 +49,8 @@ function addLayer(
   const table = channelLight(colour, gamma);
   const { low, high } = limits;
   const isStep = !(low !== high);
-  const scale = lightSteps / (high - low);
+  const last = lightSteps;
+  const scale = last / (high - low);
   const cover = mixing === 'screen' ? 1 : 0;
   for (let i = 0; i < values.length; i++) {
     const value = values[i];
@@ -57,11 +58,11 @@ function addLayer(
     // NaN, of values as of limits
     if (Number.isNaN(steps)) continue;
     isKnown[i] = 1;
-    const at = steps <= 0 ? 0 : steps >= lightSteps ? lightSteps : Math.round(steps);
-    for (let part = 0; part < 3; part++) {
-      const before = light[3 * i + part];
-      light[3 * i + part] = before + table[3 * at + part] * (1 - cover * before);
-    }
+    const at = 3 * (steps <= 0 ? 0 : steps >= last ? last : (steps + 0.5) | 0);
+    const to = 3 * i;
+    light[to] += table[at] * (1 - cover * light[to]);
+    light[to + 1] += table[at + 1] * (1 - cover * light[to + 1]);
+    light[to + 2] += table[at + 2] * (1 - cover * light[to + 2]);
   }
 }
 
@@ -85,11 +86,17 @@ function encodePicture(light: Float64Array, isKnown: Uint8Array): Uint8ClampedAr
   const picture = new Uint8ClampedArray(4 * isKnown.length);
   for (let i = 0; i < isKnown.length; i++) {
     if (isKnown[i] === 0) continue;
-    for (let part = 0; part < 3; part++) {
-      const level = light[3 * i + part];
-      picture[4 * i + part] = bytes[level >= 1 ? encodeSteps : Math.round(level * encodeSteps)];
-    }
-    picture[4 * i + 3] = 255;
+    const from = 3 * i;
+    const to = 4 * i;
+    picture[to] = bytes[encodeStep(light[from])];
+    picture[to + 1] = bytes[encodeStep(light[from + 1])];
+    picture[to + 2] = bytes[encodeStep(light[from + 2])];
+    picture[to + 3] = 255;
   }
   return picture;
+}
+
+/** Light from 0 upwards; more than full is cut off. */
+function encodeStep(level: number): number {
+  return level >= 1 ? encodeSteps : (level * encodeSteps + 0.5) | 0;
 }

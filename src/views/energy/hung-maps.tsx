@@ -1,7 +1,7 @@
 /** The small map of each band, hung above its interval in order of energy and tied to it. */
 import type { ScaleLinear } from 'd3-scale';
 import { useMemo } from 'react';
-import { ramp } from '../../science/colour/colour-scales';
+import { colourScale } from '../../science/colour/colour-scales';
 import { bandColours } from '../../state/band-colours';
 import { showLeadMap } from '../../state/lead-actions';
 import { type PlacedBand, placedBands } from '../../state/placed-bands';
@@ -88,7 +88,7 @@ function HungMap({ band, colour, leftPx, tilePx, withRange }: TileProps): React.
   const name = `band.${band.name}.integral`;
   const map = useResults((results) => results.maps.get(name) ?? null);
   const isLead = useView((view) => view.leadMap.startsWith(`band.${band.name}.`));
-  const table = useMemo(() => ramp(colour), [colour]);
+  const table = useMemo(() => colourScale(colour).table, [colour]);
   const image = useMapImage(map, table, 'p1', 'p99.5', 'linear');
   return (
     <button

@@ -2,6 +2,7 @@
  * How pins look, on maps and as lines of spectra: six colours that stay told apart with every kind of
  * colour vision, then the same six with a dashed and a dotted ring; the letter always stands beside.
  */
+import { linearFromBytes, parseHexColour } from '../../science/colour/srgb';
 import type { Theme } from '../../state/view-store';
 
 /** Amber, sky, rose, lavender, moss, plum; at least 3 : 1 against the plot's ground of the theme. */
@@ -29,4 +30,10 @@ function pinNumber(name: string): number {
   let number = 0;
   for (const letter of name) number = number * 26 + (letter.charCodeAt(0) - 64);
   return Math.max(number - 1, 0);
+}
+
+/** Whether a "#rrggbb" needs something light around it to stand out from any picture. */
+export function isDark(colour: string): boolean {
+  const [red, green, blue] = linearFromBytes(parseHexColour(colour));
+  return 0.2126 * red + 0.7152 * green + 0.0722 * blue < 0.25;
 }

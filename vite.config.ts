@@ -87,6 +87,8 @@ export default defineConfig(({ mode }) => {
   }
   return {
     resolve,
+    // The plotting library speaks of Node's name for the global object.
+    define: { global: 'globalThis' },
     plugins: [react(), recipeSchemaFile(), demoOffer()],
     base: './',
     worker: { format: 'es' as const },

@@ -8,7 +8,9 @@ import { cm1FromEv, shiftCm1FromEv } from '../science/units';
 export interface ValueRow {
   /** contract name of the map */
   readonly name: string;
-  /** "tail centroid" */
+  /** what it is a property of: a band, a component; "" for the scan itself */
+  readonly group: string;
+  /** "centroid" */
   readonly label: string;
   readonly value: number;
   /** 1-σ; null where there is none */
@@ -23,7 +25,7 @@ export function valuesAt(maps: readonly DerivedMap[], { y, x }: Pixel): readonly
     const index = y * map.nx + x;
     const error = map.errors?.[index] ?? null;
     const value = map.values[index] ?? Number.NaN;
-    return [{ name: map.name, label: labelOf(map.name), value, error, unit: map.unit }];
+    return [{ name: map.name, ...wordsOf(map.name), value, error, unit: map.unit }];
   });
 }
 
@@ -58,27 +60,49 @@ export function withShifts(
 const quantityWords: Readonly<Record<string, string>> = {
   integral: 'counts',
   peak: 'highest channel',
-  peak_at: 'energy of highest',
+  peak_at: 'energy of it',
+};
+
+const fitWords: Readonly<Record<string, string>> = {
+  centre_cm1: 'shift',
+  needed: 'needed, ΔBIC',
+  fwhm_g: 'fwhm, Gaussian',
+  fwhm_l: 'fwhm, Lorentzian',
 };
 
 /** A map's name in the few words of a narrow column. */
-export function labelOf(name: string): string {
+export function wordsOf(name: string): Pick<ValueRow, 'group' | 'label'> {
   const parsed = parseMapName(name);
-  if (parsed === null) return name;
+  if (parsed === null) return { group: '', label: name };
   switch (parsed.kind) {
     case 'scan':
-      return parsed.quantity === 'total' ? 'all channels' : 'height';
+      return { group: '', label: parsed.quantity === 'total' ? 'all channels' : 'height' };
     case 'band':
-      return `${parsed.band} ${quantityWords[parsed.quantity] ?? parsed.quantity}`;
+      return { group: parsed.band, label: quantityWords[parsed.quantity] ?? parsed.quantity };
     case 'fit':
-      return `${parsed.component} ${parsed.parameter}`;
+      return { group: parsed.component, label: fitWords[parsed.parameter] ?? parsed.parameter };
     case 'fit-quality':
-      return parsed.quantity === 'chi2r' ? 'χ² reduced' : `fit ${parsed.quantity}`;
+      return { group: 'fit', label: parsed.quantity === 'chi2r' ? 'χ² reduced' : parsed.quantity };
     case 'strain':
-      return parsed.method === 'pl' ? 'strain from PL' : 'strain from Raman';
+      return {
+        group: 'strain',
+        label: parsed.method === 'pl' ? 'from PL shift' : 'from Raman shift',
+      };
     case 'strain-height':
-      return `strain ${parsed.component}`;
+      return { group: 'strain', label: `from height, ${parsed.component}` };
     case 'despike':
-      return 'spikes';
+      return { group: '', label: 'channels replaced' };
   }
+}
+
+export interface ValueGroup {
+  readonly group: string;
+  readonly rows: readonly ValueRow[];
+}
+
+/** Rows gathered by what they are a property of, in the order of their first. */
+export function grouped(rows: readonly ValueRow[]): readonly ValueGroup[] {
+  const groups = new Map<string, ValueRow[]>();
+  for (const row of rows) groups.set(row.group, [...(groups.get(row.group) ?? []), row]);
+  return [...groups].map(([group, members]) => ({ group, rows: members }));
 }

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { validateRecipe } from '../../src/recipe/validate';
 import type { DerivedMap } from '../../src/science/scan';
 import { evFromNm } from '../../src/science/units';
-import { labelOf, valuesAt, withShifts } from '../../src/state/cursor-values';
+import { grouped, valuesAt, withShifts, wordsOf } from '../../src/state/cursor-values';
 import { shownMaps } from '../../src/state/shown-maps';
 
 const map = (
@@ -29,7 +29,14 @@ describe('values under the cursor', () => {
   it('come one row a map, with the uncertainty of that pixel', () => {
     const rows = valuesAt([map('band.tail.integral', [10, 20], [3, 4])], { y: 0, x: 1 });
     expect(rows).toEqual([
-      { name: 'band.tail.integral', label: 'tail counts', value: 20, error: 4, unit: 'counts' },
+      {
+        name: 'band.tail.integral',
+        group: 'tail',
+        label: 'counts',
+        value: 20,
+        error: 4,
+        unit: 'counts',
+      },
     ]);
   });
 
@@ -67,11 +74,22 @@ describe('values under the cursor', () => {
     expect(withShifts(rows, recipe, null)).toEqual(rows);
   });
 
-  it('are named in few words', () => {
-    expect(labelOf('band.tail.peak_at')).toBe('tail energy of highest');
-    expect(labelOf('scan.height')).toBe('height');
-    expect(labelOf('fit.exciton.centre')).toBe('exciton centre');
-    expect(labelOf('fit.chi2r')).toBe('χ² reduced');
+  it('are named in few words, under what they belong to', () => {
+    expect(wordsOf('band.tail.peak_at')).toEqual({ group: 'tail', label: 'energy of it' });
+    expect(wordsOf('scan.height')).toEqual({ group: '', label: 'height' });
+    expect(wordsOf('fit.exciton.centre')).toEqual({ group: 'exciton', label: 'centre' });
+    expect(wordsOf('fit.chi2r')).toEqual({ group: 'fit', label: 'χ² reduced' });
+  });
+
+  it('are gathered by band, none lost', () => {
+    const names = ['band.a.integral', 'band.a.centroid', 'band.b.integral', 'scan.total'];
+    const rows = valuesAt(
+      names.map((name) => map(name, [1], null)),
+      { y: 0, x: 0 },
+    );
+    const groups = grouped(rows);
+    expect(groups.map(({ group }) => group)).toEqual(['a', 'b', '']);
+    expect(groups.flatMap((group) => group.rows)).toEqual(rows);
   });
 
   it('follow the order of the recipe, the scan last', () => {

@@ -2,6 +2,7 @@
  * The plotted spectra: axes, grid and lines of the pins and the mean, drawn by the plotting library.
  * Create, update, destroy; it has no interaction of its own, the overlay above it has.
  */
+import { scaleLinear } from 'd3-scale';
 import type { PlotLibrary, PlotTrace } from './plotting-library';
 
 export interface SpectrumLine {
@@ -90,7 +91,7 @@ function layoutOf(frame: SpectrumFrame): Record<string, unknown> {
     xaxis: {
       ...axis,
       range: [...frame.energyRange],
-      nticks: Math.max(3, Math.round(frame.widthPx / 110)),
+      ...energyTicks(frame),
     },
     yaxis: {
       ...axis,
@@ -101,4 +102,12 @@ function layoutOf(frame: SpectrumFrame): Record<string, unknown> {
       ...(frame.isLog ? { dtick: 1 } : {}),
     },
   };
+}
+
+/** Round energies with as many decimals as their step needs, the same for all. */
+function energyTicks({ energyRange, widthPx }: SpectrumFrame): Record<string, unknown> {
+  const scale = scaleLinear(energyRange, [0, 1]);
+  const count = Math.max(3, Math.round(widthPx / 110));
+  const values = scale.ticks(count);
+  return { tickmode: 'array', tickvals: values, ticktext: values.map(scale.tickFormat(count)) };
 }

@@ -1,7 +1,8 @@
 /** Every value at one pixel with its uncertainty: under the crosshair, else at the pin made last. */
 import { useMemo } from 'react';
 import { formatMeasured } from '../../science/format';
-import { type ValueRow, valuesAt, withShifts } from '../../state/cursor-values';
+import { bandColours } from '../../state/band-colours';
+import { grouped, type ValueRow, valuesAt, withShifts } from '../../state/cursor-values';
 import { shownMaps } from '../../state/shown-maps';
 import { useCrosshair, useRecipe, useResults, useSession } from '../workbench-context';
 import styles from './values-column.module.css';
@@ -10,6 +11,7 @@ export function PixelValues(): React.JSX.Element {
   const hovered = useCrosshair();
   const recipe = useRecipe((document) => document);
   const results = useResults((state) => state.maps);
+  const colours = useMemo(() => bandColours(recipe), [recipe]);
   const laserEv = useSession(({ scan }) => scan?.open.plan.meta.laserEv ?? null);
   const maps = useMemo(() => shownMaps(recipe, results), [recipe, results]);
   const lastPin = recipe.pins?.at(-1);
@@ -31,11 +33,21 @@ export function PixelValues(): React.JSX.Element {
         </b>
         <span>{pin === undefined ? '' : `${pin.name} ${pin.label ?? ''}`}</span>
       </h2>
-      <dl className={styles.rows}>
-        {withShifts(valuesAt(maps, pixel), recipe, laserEv).map((row) => (
-          <Row key={row.name} row={row} />
-        ))}
-      </dl>
+      {grouped(withShifts(valuesAt(maps, pixel), recipe, laserEv)).map(({ group, rows }) => (
+        <div key={group} className={styles.group}>
+          {group !== '' && (
+            <h3 className={styles.groupName}>
+              <i style={{ background: colours.get(group) ?? 'transparent' }} />
+              {group}
+            </h3>
+          )}
+          <dl className={styles.rows}>
+            {rows.map((row) => (
+              <Row key={row.name} row={row} />
+            ))}
+          </dl>
+        </div>
+      ))}
     </section>
   );
 }

@@ -1,13 +1,9 @@
 /** What the user does to the lead map: which one it is, and how it is coloured. Nothing here moves a number. */
 import type { Transfer } from '../science/colour/transfer';
+import { type LimitPair, orderedLimits } from '../science/limits';
+import { mapByName } from '../science/map-by-name';
 import { leadChoices } from './lead-choices';
-import type { Limit } from './view-store';
 import type { Workbench } from './workbench';
-
-export interface LimitPair {
-  readonly low: Limit;
-  readonly high: Limit;
-}
 
 const energyLimits: LimitPair = { low: 'p2', high: 'p98' };
 const countLimits: LimitPair = { low: 'p0.5', high: 'p99.5' };
@@ -37,8 +33,16 @@ export function stepLeadMap(workbench: Workbench, by: number): void {
   if (next !== undefined) showLeadMap(workbench, next);
 }
 
-export function setLeadLimits({ view }: Workbench, { low, high }: LimitPair): void {
-  view.setState({ leadLow: low, leadHigh: high });
+/** Limits from the fields; a pair whose low limit is not below the high one is not taken. */
+export function setLeadLimits(
+  { view, results }: Workbench,
+  limits: LimitPair,
+  moved: 'low' | 'high',
+): void {
+  const { maps } = results.getState();
+  const map = mapByName((name) => maps.get(name), view.getState().leadMap);
+  const ordered = orderedLimits(limits, moved, map?.values ?? null);
+  if (ordered !== null) view.setState({ leadLow: ordered.low, leadHigh: ordered.high });
 }
 
 export function setLeadColours({ view }: Workbench, colourScale: string): void {

@@ -1,5 +1,5 @@
 /** A map in a pane: its picture, what lies over it, and what pointer and keys do on it. */
-import { type ReactNode, useId, useMemo, useRef } from 'react';
+import { type ReactNode, type RefObject, useId, useMemo, useRef } from 'react';
 import type { ScanMeta } from '../../science/scan';
 import type { Pixel } from '../../state/crosshair';
 import { fieldOf } from '../canvas/field-of';
@@ -22,11 +22,14 @@ interface Props {
   readonly corner?: ReactNode;
   /** a sentence in place of the picture */
   readonly message?: string | null;
+  /** for callers that need the size of the stage */
+  readonly stageRef?: RefObject<HTMLDivElement | null>;
 }
 
 export function MapCanvas(props: Props): React.JSX.Element {
   const { meta, image, label, describePixel, corner, message = null } = props;
-  const host = useRef<HTMLDivElement>(null);
+  const ownStage = useRef<HTMLDivElement>(null);
+  const host = props.stageRef ?? ownStage;
   const picture = useRef<HTMLCanvasElement>(null);
   const overlay = useRef<HTMLCanvasElement>(null);
   const cornerBox = useRef<HTMLDivElement>(null);

@@ -1,0 +1,47 @@
+/** What the lead pane shows, put together from the view settings, the recipe and the results. */
+import { useMemo } from 'react';
+import type { Limits } from '../../science/colour/transfer';
+import { mapByName } from '../../science/map-by-name';
+import type { DerivedMap } from '../../science/scan';
+import { type ChoiceGroup, choiceOf, leadChoices, type MapChoice } from '../../state/lead-choices';
+import { limitsOf } from '../map/map-limits';
+import { type MapPicture, useMapImage } from '../map/use-map-image';
+import { useRecipe, useResults, useView } from '../workbench-context';
+import { scaleTable, shownScale } from './lead-scale';
+
+export interface LeadMap {
+  readonly choice: MapChoice;
+  readonly groups: readonly ChoiceGroup[];
+  /** null until it is known */
+  readonly map: DerivedMap | null;
+  readonly image: MapPicture | null;
+  /** NaN while there is no map */
+  readonly limits: Limits;
+  readonly scale: string;
+  readonly table: Uint8Array;
+}
+
+const total: MapChoice = { name: 'scan.total', title: 'Counts in all channels', unit: 'counts' };
+const unknown: Limits = { low: Number.NaN, high: Number.NaN };
+
+export function useLeadMap(): LeadMap {
+  const recipe = useRecipe((document) => document);
+  const known = useResults((results) => results.maps);
+  const wanted = useView((view) => view.leadMap);
+  const low = useView((view) => view.leadLow);
+  const high = useView((view) => view.leadHigh);
+  const wantedScale = useView((view) => view.colourScale);
+  const transfer = useView((view) => view.transfer);
+
+  const groups = useMemo(() => leadChoices(recipe, known), [recipe, known]);
+  const choice = choiceOf(groups, wanted) ?? total;
+  const map = useMemo(
+    () => mapByName((name) => known.get(name), choice.name),
+    [known, choice.name],
+  );
+  const limits = map === null ? unknown : limitsOf(map.values, low, high);
+  const scale = shownScale(wantedScale, limits);
+  const table = useMemo(() => scaleTable(scale, limits), [scale, limits]);
+  const image = useMapImage(map, table, low, high, transfer);
+  return { choice, groups, map, image, limits, scale, table };
+}

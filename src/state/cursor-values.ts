@@ -95,6 +95,12 @@ export function wordsOf(name: string): Pick<ValueRow, 'group' | 'label'> {
   }
 }
 
+/** "tail centroid": a map's name where it stands by itself. */
+export function labelOf(name: string): string {
+  const { group, label } = wordsOf(name);
+  return group === '' ? label : `${group} ${label}`;
+}
+
 export interface ValueGroup {
   readonly group: string;
   readonly rows: readonly ValueRow[];

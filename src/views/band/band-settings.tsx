@@ -6,6 +6,7 @@ import { deleteBand, setBandEnds, setBandName, setFloor } from '../../state/band
 import { bandColours } from '../../state/band-colours';
 import { showLeadMap } from '../../state/lead-actions';
 import { NumberEntry } from '../forms/number-entry';
+import side from '../shell/side-column.module.css';
 import { useRecipe, useView, useWorkbench } from '../workbench-context';
 import styles from './band-settings.module.css';
 
@@ -28,13 +29,13 @@ export function BandSettings({ name }: { readonly name: string }): React.JSX.Ele
   const recipe = useRecipe((document) => document);
   const leadMap = useView((view) => view.leadMap);
   const band = recipe.bands?.find((candidate) => candidate.name === name);
-  if (band === undefined) return <p className={styles.hint}>Select a band on the spectrum.</p>;
+  if (band === undefined) return <p className={side.hint}>Select a band on the spectrum.</p>;
   const unit = band.unit === 'cm-1' ? 'cm⁻¹' : band.unit;
   const step = band.unit === 'eV' ? 0.001 : band.unit === 'meV' ? 1 : 0.5;
   return (
     <section className={styles.section} aria-label={`Settings of band ${name}`}>
-      <h2 className={styles.heading}>
-        Band <i style={{ background: bandColours(recipe).get(name) }} />
+      <h2 className={side.heading}>
+        Band <i className={styles.swatch} style={{ background: bandColours(recipe).get(name) }} />
       </h2>
       <TextField
         key={name}

@@ -3,6 +3,7 @@ import { X } from 'lucide-react';
 import { Button, Input, TextField } from 'react-aria-components';
 import { labelPinAs, removePin } from '../../state/pin-actions';
 import { pinColour } from '../map/pin-styles';
+import side from '../shell/side-column.module.css';
 import { useRecipe, useWorkbench } from '../workbench-context';
 import styles from './recipe-column.module.css';
 
@@ -11,10 +12,10 @@ export function PinList(): React.JSX.Element {
   const pins = useRecipe((document) => document.pins) ?? [];
   return (
     <section aria-label="Pins">
-      <h2 className={styles.heading}>
+      <h2 className={side.heading}>
         Pins <span>{pins.length === 0 ? '' : pins.length}</span>
       </h2>
-      {pins.length === 0 && <p className={styles.hint}>Click a map to pin a pixel.</p>}
+      {pins.length === 0 && <p className={side.hint}>Click a map to pin a pixel.</p>}
       <ul className={styles.pins}>
         {pins.map(({ name, x, y, label }) => (
           <li

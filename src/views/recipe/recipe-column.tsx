@@ -4,6 +4,7 @@ import { selectBand } from '../../state/band-actions';
 import { bandColours } from '../../state/band-colours';
 import { reviseImport } from '../../state/scan-opening';
 import { unbuiltByPath } from '../../state/unbuilt-blocks';
+import side from '../shell/side-column.module.css';
 import { useRecipe, useSession, useView, useWorkbench } from '../workbench-context';
 import { ConditionSteps } from './condition-steps';
 import { PinList } from './pin-list';
@@ -22,8 +23,8 @@ export function RecipeColumn(): React.JSX.Element {
   const channels = recipe.blend?.channels ?? [];
   const isBandSelected = selection.kind === 'band';
   return (
-    <aside className={styles.column} aria-label="Recipe">
-      <h2 className={styles.heading}>
+    <aside className={`${side.column} ${styles.column}`} aria-label="Recipe">
+      <h2 className={side.heading}>
         Recipe <span>{recipe.title ?? ''}</span>
       </h2>
       <ol className={styles.steps}>

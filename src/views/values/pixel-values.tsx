@@ -4,6 +4,7 @@ import { formatMeasured } from '../../science/format';
 import { bandColours } from '../../state/band-colours';
 import { grouped, type ValueRow, valuesAt, withShifts } from '../../state/cursor-values';
 import { shownMaps } from '../../state/shown-maps';
+import side from '../shell/side-column.module.css';
 import { useCrosshair, useRecipe, useResults, useSession } from '../workbench-context';
 import styles from './values-column.module.css';
 
@@ -19,15 +20,15 @@ export function PixelValues(): React.JSX.Element {
   if (pixel === null || maps.length === 0) {
     return (
       <section className={styles.section}>
-        <h2 className={styles.heading}>Values</h2>
-        <p className={styles.hint}>Point at a map to read every value there.</p>
+        <h2 className={side.heading}>Values</h2>
+        <p className={side.hint}>Point at a map to read every value there.</p>
       </section>
     );
   }
   const pin = recipe.pins?.find(({ x, y }) => x === pixel.x && y === pixel.y);
   return (
     <section className={styles.section} data-testid="values">
-      <h2 className={styles.heading}>
+      <h2 className={side.heading}>
         <b>
           Pixel {pixel.x}, {pixel.y}
         </b>

@@ -2,7 +2,7 @@
 import { useMemo } from 'react';
 import { formatMeasured } from '../../science/format';
 import { bandColours } from '../../state/band-colours';
-import { grouped, type ValueRow, valuesAt, withShifts } from '../../state/cursor-values';
+import { grouped, labelOf, type ValueRow, valuesAt, withShifts } from '../../state/cursor-values';
 import { shownMaps } from '../../state/shown-maps';
 import side from '../shell/side-column.module.css';
 import { useCrosshair, useRecipe, useResults, useSession } from '../workbench-context';
@@ -35,30 +35,35 @@ export function PixelValues(): React.JSX.Element {
         <span>{pin === undefined ? '' : `${pin.name} ${pin.label ?? ''}`}</span>
       </h2>
       {grouped(withShifts(valuesAt(maps, pixel), recipe, laserEv)).map(({ group, rows }) => (
-        <div key={group} className={styles.group}>
-          {group !== '' && (
-            <h3 className={styles.groupName}>
-              <i style={{ background: colours.get(group) ?? 'transparent' }} />
-              {group}
-            </h3>
-          )}
-          <dl className={styles.rows}>
-            {rows.map((row) => (
-              <Row key={row.name} row={row} />
-            ))}
-          </dl>
-        </div>
+        <dl key={group} className={styles.group}>
+          {rows.map((row, index) => (
+            <Row key={row.name} row={row} colour={index === 0 ? colours.get(group) : undefined} />
+          ))}
+        </dl>
       ))}
     </section>
   );
 }
 
-function Row({ row }: { readonly row: ValueRow }): React.JSX.Element {
+interface RowProps {
+  readonly row: ValueRow;
+  /** of the band, in the first row of its group, which carries the band's name */
+  readonly colour: string | undefined;
+}
+
+function Row({ row, colour }: RowProps): React.JSX.Element {
   const text = formatMeasured(row.value, row.error, row.unit);
   const [value, ...rest] = text.split(/(?= [±\p{L}%°])/u);
   return (
     <div className={styles.row} data-map={row.name}>
-      <dt>{row.label}</dt>
+      {colour === undefined ? (
+        <dt>{row.label}</dt>
+      ) : (
+        <dt className={styles.named} title={labelOf(row.name)}>
+          <i style={{ background: colour }} />
+          {row.group}
+        </dt>
+      )}
       <dd>
         {value}
         <i>{rest.join('')}</i>

@@ -12,12 +12,12 @@ export function channelLabel(source: string): string {
   return parsed?.isError === true ? `${words}, uncertainty` : words;
 }
 
-/** "1.865–1.925 eV" for a map of a band; "" for others. */
+/** "1.865–1.925", in eV, for a map of a band; "" for others. */
 export function channelRange(source: string, bands: readonly PlacedBand[]): string {
   const parsed = parseMapName(source);
   if (parsed?.kind !== 'band') return '';
   const band = bands.find(({ name }) => name === parsed.band);
-  return band === undefined ? '' : `${band.fromEv.toFixed(3)}–${band.toEv.toFixed(3)} eV`;
+  return band === undefined ? '' : `${band.fromEv.toFixed(3)}–${band.toEv.toFixed(3)}`;
 }
 
 /** A source that has no map: `waiting` while it is being made, else why there will be none. */

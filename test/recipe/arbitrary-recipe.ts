@@ -1,28 +1,17 @@
 /** Valid recipes of every kind, for property tests. */
 import fc from 'fast-check';
-
-const finite = fc.double({ min: -1e6, max: 1e6, noNaN: true });
-const positive = fc.double({ min: 1e-3, max: 1e4, noNaN: true });
-const file = fc.constantFrom('axis.npy', 'dark/mean.csv', 'µ "quoted" \\ name.txt');
-const colour = fc
-  .integer({ min: 0, max: 0xffffff })
-  .map((n) => `#${n.toString(16).padStart(6, '0')}`);
-const index = fc.nat({ max: 4000 });
-
-/** Optional fields present by chance; the ones in `required` always. */
-function block(
-  fields: Record<string, fc.Arbitrary<unknown>>,
-  required: readonly string[] = [],
-): fc.Arbitrary<Record<string, unknown>> {
-  return fc
-    .record(fields, { requiredKeys: [...required], noNullPrototype: true })
-    .map((value) => value as Record<string, unknown>);
-}
-
-/** Two different numbers, in either order. */
-function interval(number: fc.Arbitrary<number>): fc.Arbitrary<[number, number]> {
-  return fc.tuple(number, number).filter(([from, to]) => from !== to);
-}
+import {
+  bin,
+  block,
+  colour,
+  file,
+  finite,
+  index,
+  interval,
+  positive,
+  word,
+} from './arbitrary-parts';
+import { step } from './arbitrary-step';
 
 function names(most: number): fc.Arbitrary<string[]> {
   return fc.uniqueArray(fc.stringMatching(/^[A-Za-z0-9_-]{1,8}$/), {
@@ -61,92 +50,6 @@ const scan = block({
   }),
   height: block({ file, unit: fc.constantFrom('nm', 'um'), shift_px: fc.tuple(finite, finite) }),
 });
-
-const off = fc.boolean();
-const word = <T extends string>(value: T): fc.Arbitrary<T> => fc.constant(value);
-const iterations = fc.integer({ min: 1, max: 50 });
-const bin = fc.integer({ min: 1, max: 8 });
-
-const step = fc.oneof(
-  block(
-    {
-      step: word('despike'),
-      off,
-      method: fc.constantFrom('spectral', 'neighbour'),
-      threshold: positive,
-    },
-    ['step'],
-  ),
-  block({ step: word('offset'), off, counts: finite }, ['step', 'counts']),
-  block({ step: word('response'), off, file }, ['step', 'file']),
-  block(
-    {
-      step: word('calibrate'),
-      off,
-      points: fc.uniqueArray(fc.tuple(finite, finite), {
-        minLength: 3,
-        maxLength: 5,
-        selector: ([measured]) => measured,
-      }),
-      degree: fc.integer({ min: 0, max: 2 }),
-      unit: fc.constantFrom('nm', 'cm-1'),
-    },
-    ['step', 'points', 'unit'],
-  ),
-  block(
-    {
-      step: word('farfield'),
-      off,
-      file,
-      scale: fc.oneof(positive, word('fit')),
-      window: interval(positive),
-    },
-    ['step', 'file', 'window'],
-  ),
-  block({ step: word('baseline'), off, method: word('arpls'), smoothness: positive, iterations }, [
-    'step',
-    'method',
-  ]),
-  block(
-    {
-      step: word('baseline'),
-      off,
-      method: word('asls'),
-      asymmetry: fc.double({ min: 0.001, max: 0.5, noNaN: true }),
-    },
-    ['step', 'method'],
-  ),
-  block({ step: word('baseline'), off, method: word('snip'), half_width: iterations }, [
-    'step',
-    'method',
-  ]),
-  block(
-    {
-      step: word('baseline'),
-      off,
-      method: word('polynomial'),
-      degree: bin,
-      windows: fc.array(interval(positive), { minLength: 1, maxLength: 3 }),
-    },
-    ['step', 'method'],
-  ),
-  block({ step: word('denoise'), off, method: word('svd'), rank: fc.oneof(bin, word('auto')) }, [
-    'step',
-    'method',
-  ]),
-  block({ step: word('align-rows'), off, max_shift_px: positive }, ['step']),
-  block(
-    {
-      step: word('crop'),
-      off,
-      axis: interval(positive),
-      unit: fc.constantFrom('eV', 'nm', 'cm-1'),
-      x: fc.tuple(index, index),
-    },
-    ['step', 'axis'],
-  ),
-  block({ step: word('bin'), off, x: bin, y: bin, k: bin }, ['step', 'k']),
-);
 
 function band(name: string): fc.Arbitrary<Record<string, unknown>> {
   return interval(positive).chain(([from, to]) =>

@@ -2,9 +2,11 @@
 import { describe, expect, it } from 'vitest';
 import type { ScanChoices } from '../../src/io/scan-choices';
 import { mergeScanChoices } from '../../src/recipe/merge-scan-choices';
+import { validateRecipe } from '../../src/recipe/validate';
 import { contractRecipe } from './contract-recipe';
 
-const before = contractRecipe.scan as unknown as ScanChoices;
+const validated = validateRecipe(contractRecipe);
+const before: ScanChoices = (validated.ok ? validated.recipe.scan : null) ?? {};
 
 describe('stated choices', () => {
   it('are laid over the old ones field by field', () => {

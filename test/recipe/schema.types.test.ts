@@ -58,10 +58,8 @@ describe('types of the recipe', () => {
   });
 
   it('nothing in a recipe can be written to', () => {
-    const recipe = { recipe: 1, bands: [] } as Recipe;
-    // @ts-expect-error: read-only
-    recipe.recipe = 1;
-    // @ts-expect-error: read-only
-    recipe.bands?.push({ name: 'tail', from: 1, to: 2, unit: 'eV' });
+    expectTypeOf<Recipe>().toEqualTypeOf<Readonly<Recipe>>();
+    expectTypeOf<NonNullable<Recipe['bands']>>().toEqualTypeOf<readonly RecipeBand[]>();
+    expectTypeOf<RecipeBand>().toEqualTypeOf<Readonly<RecipeBand>>();
   });
 });

@@ -1,6 +1,7 @@
 /** Problems of a recipe as the one error a user meets. */
 import { describe, expect, it } from 'vitest';
 import { formatProblem, recipeError } from '../../src/recipe/problems';
+import { parseRecipe } from '../../src/recipe/validate';
 import { problemsOf } from './spoiled-recipe';
 
 describe('the error of a recipe', () => {

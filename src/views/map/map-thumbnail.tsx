@@ -14,17 +14,19 @@ interface Props {
   readonly image: Picture | null;
   readonly widthPx: number;
   readonly heightPx: number;
+  /** height of a pixel over its width; left out: that of the scan on screen */
+  readonly aspect?: number;
 }
 
-export function MapThumbnail({ image, widthPx, heightPx }: Props): React.JSX.Element {
+export function MapThumbnail({ image, widthPx, heightPx, ...given }: Props): React.JSX.Element {
   const canvas = useRef<HTMLCanvasElement>(null);
   const meta = useSession((session) => session.scan?.open.plan.meta ?? null);
   const theme = useView((view) => view.theme);
   const placement = useMemo(() => {
     if (image === null) return null;
-    const aspect = meta === null ? 1 : fieldOf(meta).aspect;
+    const aspect = given.aspect ?? (meta === null ? 1 : fieldOf(meta).aspect);
     return place(fitted, { nx: image.nx, ny: image.ny, aspect }, { widthPx, heightPx });
-  }, [image, meta, widthPx, heightPx]);
+  }, [image, meta, given.aspect, widthPx, heightPx]);
 
   useEffect(() => {
     const element = canvas.current;

@@ -1,0 +1,57 @@
+/** One guess of the import sheet: what it is, what else it could be, and why. */
+import { useMemo } from 'react';
+import type { ScanChoices } from '../../io/scan-choices';
+import type { Guess } from '../../io/scan-plan';
+import { Choice } from '../forms/choice';
+import { evidenceInWords, fieldWords } from './guess-words';
+import styles from './import-sheet.module.css';
+
+interface Props {
+  readonly guess: Guess;
+  readonly onState: (stated: ScanChoices) => void;
+  /** fields for numbers the user may state */
+  readonly children?: React.ReactNode;
+}
+
+const asItIs = 'as it is';
+
+export function GuessRow({ guess, onState, children }: Props): React.JSX.Element {
+  const { field, label, source, alternatives } = guess;
+  const hasFields = children !== undefined && source !== 'missing';
+  const groups = useMemo(
+    () => [
+      {
+        title: '',
+        items: [
+          { id: asItIs, words: label },
+          ...alternatives.map((other, index) => ({ id: String(index), words: other.label })),
+        ],
+      },
+    ],
+    [label, alternatives],
+  );
+  return (
+    <div
+      className={`${styles.row} ${source === 'missing' ? styles.missing : ''}`}
+      data-field={field}
+    >
+      <span className={styles.field}>{fieldWords[field]}</span>
+      <div className={styles.value}>
+        {alternatives.length === 0 && !hasFields && <span className={styles.plain}>{label}</span>}
+        {alternatives.length > 0 && (
+          <Choice
+            label={fieldWords[field]}
+            value={asItIs}
+            groups={groups}
+            onChange={(id) => {
+              const other = alternatives[Number(id)];
+              if (other !== undefined) onState(other.choice);
+            }}
+          />
+        )}
+        {children}
+        <small>{evidenceInWords(guess)}</small>
+      </div>
+    </div>
+  );
+}

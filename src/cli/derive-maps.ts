@@ -30,7 +30,7 @@ export async function deriveMaps(
     for (const { quantity, values, errors } of await scan.bandMaps(request, { signal })) {
       maps.push({
         name: `band.${name}.${quantity}`,
-        unit: bandQuantityUnit(quantity),
+        unit: bandQuantityUnit(quantity, scan.overview.meta.quantity),
         ny: scan.overview.totals.ny,
         nx: scan.overview.totals.nx,
         values,
@@ -46,7 +46,8 @@ async function scanMaps(scan: OpenScan, signal: AbortSignal): Promise<readonly D
   const { totals, height } = scan.overview;
   const whole = { band: wholeAxis(scan), quantities: ['integral' as const] };
   const [integral] = await scan.bandMaps(whole, { signal });
-  const total = { name: 'scan.total', unit: 'counts', ...totals, errors: integral?.errors ?? null };
+  const unit = scan.overview.meta.quantity;
+  const total = { name: 'scan.total', unit, ...totals, errors: integral?.errors ?? null };
   if (height === null) return [total];
   return [total, { name: 'scan.height', unit: 'nm', ...height, errors: null }];
 }

@@ -56,7 +56,7 @@ function offered(parts: MapName, unit: string, title: string): OfferedMap {
 }
 
 const scanMaps = [
-  offered({ kind: 'scan', quantity: 'total', isError: false }, 'counts', 'Counts in all channels'),
+  offered({ kind: 'scan', quantity: 'total', isError: false }, 'counts', 'Sum of all channels'),
   offered({ kind: 'scan', quantity: 'height', isError: false }, 'nm', 'Height'),
 ];
 
@@ -129,7 +129,7 @@ const bandUnits: Readonly<Record<BandQuantity, string>> = {
 };
 
 const bandWords: Readonly<Record<BandQuantity, string>> = {
-  integral: 'Counts in',
+  integral: 'Integral of',
   centroid: 'Centroid of',
   median: 'Median energy of',
   spread: 'RMS width of',
@@ -137,9 +137,14 @@ const bandWords: Readonly<Record<BandQuantity, string>> = {
   peak_at: 'Energy of the highest channel of',
 };
 
-/** Unit of band.NAME.QUANTITY. */
-export function bandQuantityUnit(quantity: BandQuantity): string {
-  return bandUnits[quantity];
+/**
+ * Unit of band.NAME.QUANTITY.
+ *
+ * @param scanQuantity - what the scan's values are: "counts", or another quantity ("absorbance")
+ */
+export function bandQuantityUnit(quantity: BandQuantity, scanQuantity = 'counts'): string {
+  const unit = bandUnits[quantity];
+  return unit === 'counts' ? scanQuantity : unit;
 }
 
 function bandMaps(band: string): readonly OfferedMap[] {

@@ -5,6 +5,7 @@
 import { createLatestWins, type LatestWins } from '../../workers/latest-wins';
 import { bandToEnergy } from '../recipe/band-energies';
 import { parseMapName } from '../recipe/map-names';
+import { bandQuantityUnit } from '../recipe/offered-maps';
 import type { Recipe, RecipeBand } from '../recipe/schema';
 import type { BandQuantity, EnergyBand } from '../science/bands/band';
 import type { DerivedMap } from '../science/scan';
@@ -85,7 +86,7 @@ export function followBands(workbench: Workbench): () => void {
       const computed = await scan.open.bandMaps({ band: energies, quantities });
       const { ny, nx } = scan.open.plan.meta.shape;
       const maps = computed.map(({ quantity, values, errors }): DerivedMap => {
-        const unit = unitOf(quantity);
+        const unit = bandQuantityUnit(quantity, scan.open.plan.meta.quantity);
         return { name: `band.${band.name}.${quantity}`, unit, ny, nx, values, errors };
       });
       for (const [index, map] of maps.entries()) {
@@ -134,8 +135,4 @@ function wantedQuantities(
     if (parsed?.kind === 'band' && parsed.band === name) wanted.add(parsed.quantity);
   }
   return [...wanted];
-}
-
-function unitOf(quantity: BandQuantity): string {
-  return quantity === 'integral' || quantity === 'peak' ? 'counts' : 'eV';
 }

@@ -178,7 +178,7 @@ export async function openScan(workbench: Workbench, request: OpenRequest): Prom
     const { overview } = open;
     results.clear();
     results.put([
-      { name: 'scan.total', unit: 'counts', ...overview.totals, errors: null },
+      { name: 'scan.total', unit: overview.meta.quantity, ...overview.totals, errors: null },
       ...(overview.height === null
         ? []
         : [{ name: 'scan.height', unit: 'nm', ...overview.height, errors: null }]),

@@ -2,9 +2,11 @@
 import type { ScaleLinear } from 'd3-scale';
 import { useMemo } from 'react';
 import { colourScale } from '../../science/colour/colour-scales';
+import type { ScanMeta } from '../../science/scan';
 import { bandColours } from '../../state/band-colours';
 import { showLeadMap } from '../../state/lead-actions';
 import { type PlacedBand, placedBands } from '../../state/placed-bands';
+import { fieldOf } from '../canvas/field-of';
 import { MapThumbnail } from '../map/map-thumbnail';
 import { useMapImage } from '../map/use-map-image';
 import { useRecipe, useResults, useSession, useView, useWorkbench } from '../workbench-context';
@@ -39,6 +41,8 @@ export function HungMaps({ evToX, widthPx }: Props): React.JSX.Element {
   const slotPx = isWide ? wideSlotPx : Math.min(narrowSlotPx, (toPx - fromPx) / bands.length);
   const tilePx = Math.min(panelLayout.tilePx, slotPx - 4);
   const middles = bands.map((band) => evToX((band.fromEv + band.toEv) / 2));
+  const mapPx =
+    scan === null ? { widthPx: tilePx, heightPx: tilePx } : sizeIn(tilePx, scan.open.plan.meta);
   const lefts = hangTiles({ centresPx: middles, slotPx, fromPx, toPx });
   return (
     <>
@@ -68,6 +72,7 @@ export function HungMaps({ evToX, widthPx }: Props): React.JSX.Element {
           colour={colours.get(band.name) ?? '#ffffff'}
           leftPx={lefts[index] ?? 0}
           tilePx={tilePx}
+          mapPx={mapPx}
           withRange={isWide}
         />
       ))}
@@ -75,15 +80,26 @@ export function HungMaps({ evToX, widthPx }: Props): React.JSX.Element {
   );
 }
 
+/** The map's size within its tile, in proportion; it stands on the tile's lower edge, where its tie begins. */
+function sizeIn(tilePx: number, meta: ScanMeta): TileProps['mapPx'] {
+  const { nx, ny, aspect } = fieldOf(meta);
+  const high = (ny * aspect) / nx;
+  return {
+    widthPx: high > 1 ? tilePx / high : tilePx,
+    heightPx: high > 1 ? tilePx : tilePx * high,
+  };
+}
+
 interface TileProps {
   readonly band: PlacedBand;
   readonly colour: string;
   readonly leftPx: number;
   readonly tilePx: number;
+  readonly mapPx: { readonly widthPx: number; readonly heightPx: number };
   readonly withRange: boolean;
 }
 
-function HungMap({ band, colour, leftPx, tilePx, withRange }: TileProps): React.JSX.Element {
+function HungMap({ band, colour, leftPx, tilePx, mapPx, withRange }: TileProps): React.JSX.Element {
   const workbench = useWorkbench();
   const name = `band.${band.name}.integral`;
   const map = useResults((results) => results.maps.get(name) ?? null);
@@ -100,7 +116,9 @@ function HungMap({ band, colour, leftPx, tilePx, withRange }: TileProps): React.
       aria-label={`Map of band ${band.name}: show as the lead map`}
     >
       <span className={styles.tileName}>{band.name}</span>
-      <MapThumbnail image={image} widthPx={tilePx} heightPx={tilePx} />
+      <span className={styles.tileMap} style={{ width: tilePx, height: tilePx }}>
+        <MapThumbnail image={image} {...mapPx} />
+      </span>
       {withRange && (
         <span className={styles.tileRange} style={{ left: tilePx + 7 }}>
           {band.fromEv.toFixed(3)}

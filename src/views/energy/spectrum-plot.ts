@@ -3,6 +3,7 @@
  * Create, update, destroy; it has no interaction of its own, the overlay above it has.
  */
 import { scaleLinear } from 'd3-scale';
+import { formatCount } from '../../science/format';
 import type { PlotLibrary, PlotTrace } from './plotting-library';
 
 export interface SpectrumLine {
@@ -97,11 +98,22 @@ function layoutOf(frame: SpectrumFrame): Record<string, unknown> {
       ...axis,
       type: frame.isLog ? 'log' : 'linear',
       range: frame.isLog ? [Math.log10(low), Math.log10(high)] : [low, high],
-      nticks: 4,
-      tickformat: '~s',
-      ...(frame.isLog ? { dtick: 1 } : {}),
+      ...countsTicks(frame),
     },
   };
+}
+
+function countsTicks({ countsRange, isLog }: SpectrumFrame): Record<string, unknown> {
+  const ticks = isLog ? decades(countsRange) : scaleLinear(countsRange, [0, 1]).ticks(4);
+  return { tickmode: 'array', tickvals: ticks, ticktext: ticks.map(formatCount) };
+}
+
+/** Powers of ten within a range. */
+function decades([low, high]: readonly [number, number]): readonly number[] {
+  const powers: number[] = [];
+  for (let power = Math.ceil(Math.log10(low)); 10 ** power <= high; power++)
+    powers.push(10 ** power);
+  return powers;
 }
 
 /** Round energies with as many decimals as their step needs, the same for all. */

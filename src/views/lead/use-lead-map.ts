@@ -3,15 +3,17 @@ import { useMemo } from 'react';
 import type { Limits } from '../../science/colour/transfer';
 import { mapByName } from '../../science/map-by-name';
 import type { DerivedMap } from '../../science/scan';
-import { type ChoiceGroup, choiceOf, leadChoices, type MapChoice } from '../../state/lead-choices';
+import { choiceOf, type MapChoice } from '../../state/lead-choices';
+import type { ChoiceItems } from '../forms/choice';
+import { useMapChoices } from '../forms/use-map-choices';
 import { limitsOf } from '../map/map-limits';
 import { type MapPicture, useMapImage } from '../map/use-map-image';
-import { useRecipe, useResults, useView } from '../workbench-context';
+import { useResults, useView } from '../workbench-context';
 import { scaleTable, shownScale } from './lead-scale';
 
 export interface LeadMap {
   readonly choice: MapChoice;
-  readonly groups: readonly ChoiceGroup[];
+  readonly items: readonly ChoiceItems[];
   /** null until it is known */
   readonly map: DerivedMap | null;
   readonly image: MapPicture | null;
@@ -21,11 +23,10 @@ export interface LeadMap {
   readonly table: Uint8Array;
 }
 
-const total: MapChoice = { name: 'scan.total', title: 'Counts in all channels', unit: 'counts' };
+const total: MapChoice = { name: 'scan.total', title: 'Sum of all channels', unit: 'counts' };
 const unknown: Limits = { low: Number.NaN, high: Number.NaN };
 
 export function useLeadMap(): LeadMap {
-  const recipe = useRecipe((document) => document);
   const known = useResults((results) => results.maps);
   const wanted = useView((view) => view.leadMap);
   const low = useView((view) => view.leadLow);
@@ -33,7 +34,7 @@ export function useLeadMap(): LeadMap {
   const wantedScale = useView((view) => view.colourScale);
   const transfer = useView((view) => view.transfer);
 
-  const groups = useMemo(() => leadChoices(recipe, known), [recipe, known]);
+  const { groups, items } = useMapChoices();
   const choice = choiceOf(groups, wanted) ?? total;
   const map = useMemo(
     () => mapByName((name) => known.get(name), choice.name),
@@ -43,5 +44,13 @@ export function useLeadMap(): LeadMap {
   const scale = shownScale(wantedScale, limits);
   const table = useMemo(() => scaleTable(scale, limits), [scale, limits]);
   const image = useMapImage(map, table, low, high, transfer);
-  return { choice, groups, map, image, limits, scale, table };
+  return {
+    choice: map === null ? choice : { ...choice, unit: map.unit },
+    items,
+    map,
+    image,
+    limits,
+    scale,
+    table,
+  };
 }

@@ -4,17 +4,16 @@ import { useMemo } from 'react';
 import { Button, Label, Radio, RadioGroup } from 'react-aria-components';
 import { addChannel, canAddChannel, setMixing } from '../../state/blend-actions';
 import { fullChannelsOf } from '../../state/blend-channels';
-import { leadChoices } from '../../state/lead-choices';
-import { useRecipe, useResults, useWorkbench } from '../workbench-context';
+import { useMapChoices } from '../forms/use-map-choices';
+import { useRecipe, useWorkbench } from '../workbench-context';
 import styles from './blend-settings.module.css';
 import { ChannelSettings } from './channel-settings';
 
 export function BlendSettings(): React.JSX.Element {
   const workbench = useWorkbench();
   const recipe = useRecipe((document) => document);
-  const known = useResults((results) => results.maps);
   const channels = useMemo(() => fullChannelsOf(recipe.blend), [recipe.blend]);
-  const groups = useMemo(() => leadChoices(recipe, known), [recipe, known]);
+  const { items } = useMapChoices();
   const entries = channels.map((channel, index) => ({ channel, index, key: `channel ${index}` }));
   return (
     <section className={styles.section} aria-label="Settings of the blend">
@@ -36,7 +35,7 @@ export function BlendSettings(): React.JSX.Element {
       )}
       <ol className={styles.channels}>
         {entries.map(({ channel, index, key }) => (
-          <ChannelSettings key={key} channel={channel} index={index} groups={groups} />
+          <ChannelSettings key={key} channel={channel} index={index} choices={items} />
         ))}
       </ol>
       {canAddChannel(recipe) && (

@@ -1,11 +1,10 @@
 /** One channel of the blend: its map, colour, limits and gamma. Each change is an edit; a drag is one. */
 import { X } from 'lucide-react';
+import { memo, useMemo } from 'react';
 import { Button } from 'react-aria-components';
 import type { FullChannel } from '../../recipe/defaults';
 import { formatLimits } from '../../science/limit-text';
-import { type LimitPair, percentOf } from '../../science/limits';
-import { mapByName } from '../../science/map-by-name';
-import type { DerivedMap } from '../../science/scan';
+import type { LimitPair } from '../../science/limits';
 import {
   removeChannel,
   setChannelColour,
@@ -14,26 +13,27 @@ import {
   setChannelSource,
 } from '../../state/blend-actions';
 import { channelLabel } from '../../state/channel-words';
-import type { ChoiceGroup } from '../../state/lead-choices';
-import { Choice } from '../forms/choice';
+import { Choice, type ChoiceItems } from '../forms/choice';
 import { LimitEntry } from '../forms/limit-entry';
 import { RangeSlider } from '../forms/range-slider';
 import { limitsOf } from '../map/map-limits';
-import { useResults, useWorkbench } from '../workbench-context';
+import { useWorkbench } from '../workbench-context';
 import styles from './blend-settings.module.css';
 import { gammaOfHand, handOfGamma } from './gamma-hand';
+import { LimitSlider } from './limit-slider';
+import { useSource } from './use-source';
 
 interface Props {
   readonly channel: FullChannel;
   readonly index: number;
-  readonly groups: readonly ChoiceGroup[];
+  readonly choices: readonly ChoiceItems[];
 }
 
-export function ChannelSettings({ channel, index, groups }: Props): React.JSX.Element {
+/** Drawn again when the channel changes, not with every new map: a band may be in the hand. */
+export const ChannelSettings = memo(({ channel, index, choices }: Props): React.JSX.Element => {
   const workbench = useWorkbench();
   const { source, colour, low, high, gamma } = channel;
-  const known = useResults((results) => results.maps);
-  const map = mapByName((name) => known.get(name), source);
+  const offered = useMemo(() => withSource(choices, source), [choices, source]);
   const name = `channel ${index + 1}, ${channelLabel(source)}`;
   const endGesture = (): void => workbench.recipe.endGesture();
   const setLimits = (limits: LimitPair, moved: 'low' | 'high'): void =>
@@ -52,7 +52,7 @@ export function ChannelSettings({ channel, index, groups }: Props): React.JSX.El
         <Choice
           label={`Map of ${name}`}
           value={source}
-          groups={withSource(groups, source)}
+          groups={offered}
           onChange={(next) => setChannelSource(workbench, index, next)}
         />
         <Button
@@ -71,9 +71,9 @@ export function ChannelSettings({ channel, index, groups }: Props): React.JSX.El
         />
         <LimitSlider
           name={name}
+          source={source}
           low={low}
           high={high}
-          map={map}
           onChange={setLimits}
           onEnd={endGesture}
         />
@@ -97,55 +97,18 @@ export function ChannelSettings({ channel, index, groups }: Props): React.JSX.El
         />
         <output className={styles.number}>{gamma}</output>
       </div>
-      {map !== null && <LimitsInWords map={map} low={low} high={high} />}
+      <LimitsInWords source={source} low={low} high={high} />
     </li>
   );
+});
+
+interface LimitSource extends LimitPair {
+  readonly source: string;
 }
 
-interface LimitSliderProps extends LimitPair {
-  readonly name: string;
-  readonly map: DerivedMap | null;
-  readonly onChange: (limits: LimitPair, moved: 'low' | 'high') => void;
-  readonly onEnd: () => void;
-}
-
-/** Over percentiles where both limits are; else over the map's values, which the limits then become. */
-function LimitSlider({ name, map, low, high, onChange, onEnd }: LimitSliderProps) {
-  const percents = [percentOf(low), percentOf(high)] as const;
-  const [lowPercent, highPercent] = percents;
-  const isPercent = lowPercent !== null && highPercent !== null;
-  const ends = map === null ? { low: 0, high: 1 } : limitsOf(map.values, 'p0', 'p100');
-  const now = map === null ? ends : limitsOf(map.values, low, high);
-  const values = isPercent ? [lowPercent, highPercent] : [now.low, now.high];
-  const from = isPercent ? 0 : Math.min(ends.low, now.low);
-  const to = isPercent ? 100 : Math.max(ends.high, now.high);
-  // A map without values, or with one only, has no range to slide over.
-  if (!(from < to)) return <span />;
-  const step = isPercent ? 0.1 : (to - from) / 1000;
-  const written = (value: number): LimitPair['low'] =>
-    isPercent ? `p${Number(value.toFixed(1))}` : Number(value.toPrecision(6));
-  return (
-    <RangeSlider
-      label={`Limits of ${name}`}
-      hands={[`Low limit of ${name}`, `High limit of ${name}`]}
-      values={values}
-      from={from}
-      to={to}
-      step={step}
-      onChange={([nextLow = from, nextHigh = to]) => {
-        // The hand that was not moved keeps its limit as it was written.
-        const isLow = nextLow !== values[0];
-        onChange(
-          isLow ? { low: written(nextLow), high } : { low, high: written(nextHigh) },
-          isLow ? 'low' : 'high',
-        );
-      }}
-      onEnd={onEnd}
-    />
-  );
-}
-
-function LimitsInWords({ map, low, high }: LimitPair & { readonly map: DerivedMap }) {
+function LimitsInWords({ source, low, high }: LimitSource): React.JSX.Element | null {
+  const map = useSource(source);
+  if (map === null) return null;
   const text = formatLimits(limitsOf(map.values, low, high), map.unit);
   return (
     <small className={styles.limits}>
@@ -167,12 +130,8 @@ function sixDigits(colour: string): string {
 }
 
 /** The choices, and the channel's own map should it be none of them. */
-function withSource(groups: readonly ChoiceGroup[], source: string) {
-  const items = groups.map(({ title, maps }) => ({
-    title,
-    items: maps.map(({ name, title: words }) => ({ id: name, words })),
-  }));
-  const isOffered = items.some((group) => group.items.some(({ id }) => id === source));
-  if (isOffered) return items;
-  return [...items, { title: 'Other', items: [{ id: source, words: channelLabel(source) }] }];
+function withSource(choices: readonly ChoiceItems[], source: string): readonly ChoiceItems[] {
+  const isOffered = choices.some(({ items }) => items.some(({ id }) => id === source));
+  if (isOffered) return choices;
+  return [...choices, { title: 'Other', items: [{ id: source, words: channelLabel(source) }] }];
 }

@@ -1,5 +1,6 @@
 /** A drop-down list of choices, in groups where there are several. */
 import { ChevronDown } from 'lucide-react';
+import { memo, useMemo } from 'react';
 import {
   Button,
   Header,
@@ -22,18 +23,16 @@ interface Props {
   /** what is chosen, for a screen reader */
   readonly label: string;
   readonly value: string;
+  /** the same array as long as the choices are the same */
   readonly groups: readonly ChoiceItems[];
   readonly onChange: (id: string) => void;
   readonly look?: 'field' | 'title';
 }
 
-export function Choice({
-  label,
-  value,
-  groups,
-  onChange,
-  look = 'field',
-}: Props): React.JSX.Element {
+export const Choice = memo((props: Props): React.JSX.Element => {
+  const { label, value, groups, onChange, look = 'field' } = props;
+  // The list is built again, item by item, whenever its elements are others: not while a band is dragged.
+  const content = useMemo(() => contentOf(groups, label), [groups, label]);
   return (
     <Select
       className={`${styles.choice} ${look === 'title' ? styles.title : styles.field}`}
@@ -43,6 +42,14 @@ export function Choice({
         if (key !== null && String(key) !== value) onChange(String(key));
       }}
     >
+      {content}
+    </Select>
+  );
+});
+
+function contentOf(groups: readonly ChoiceItems[], label: string): React.JSX.Element {
+  return (
+    <>
       <Button className={styles.button ?? ''}>
         <SelectValue className={styles.value ?? ''} />
         <ChevronDown size={12} aria-hidden="true" />
@@ -61,6 +68,6 @@ export function Choice({
           ))}
         </ListBox>
       </Popover>
-    </Select>
+    </>
   );
 }

@@ -1,24 +1,35 @@
 /** How the lead map is coloured: limits, scale, transfer. */
+import { memo, useMemo } from 'react';
 import { setLeadColours, setLeadLimits, setLeadTransfer } from '../../state/lead-actions';
 import { Choice } from '../forms/choice';
 import { LimitEntry } from '../forms/limit-entry';
 import { useView, useWorkbench } from '../workbench-context';
 import styles from './lead-pane.module.css';
-import { suitableScales } from './lead-scale';
-import type { LeadMap } from './use-lead-map';
 
 const transfers = [
   { id: 'linear', words: 'linear' },
   { id: 'sqrt', words: 'square root' },
   { id: 'log', words: 'logarithmic' },
 ] as const;
+const transferGroups = [{ title: '', items: transfers }];
 
-export function LeadColours({ lead }: { readonly lead: LeadMap }): React.JSX.Element {
+interface Props {
+  /** name of the scale shown */
+  readonly scale: string;
+  /** names of those that suit the map, apart by spaces: a text, so that equal ones are the same */
+  readonly scaleNames: string;
+}
+
+/** Drawn again when a setting changes, not with every new map. */
+export const LeadColours = memo(({ scale, scaleNames }: Props): React.JSX.Element => {
   const workbench = useWorkbench();
   const low = useView((view) => view.leadLow);
   const high = useView((view) => view.leadHigh);
   const transfer = useView((view) => view.transfer);
-  const scales = suitableScales(lead.limits).map((name) => ({ id: name, words: name }));
+  const scales = useMemo(
+    () => [{ title: '', items: scaleNames.split(' ').map((name) => ({ id: name, words: name })) }],
+    [scaleNames],
+  );
   return (
     <fieldset className={styles.colours} aria-label="Colours of the lead map">
       <LimitEntry
@@ -34,14 +45,14 @@ export function LeadColours({ lead }: { readonly lead: LeadMap }): React.JSX.Ele
       />
       <Choice
         label="Colour scale"
-        value={lead.scale}
-        groups={[{ title: '', items: scales }]}
+        value={scale}
+        groups={scales}
         onChange={(name) => setLeadColours(workbench, name)}
       />
       <Choice
         label="Transfer"
         value={transfer}
-        groups={[{ title: '', items: transfers }]}
+        groups={transferGroups}
         onChange={(id) => {
           const chosen = transfers.find((one) => one.id === id);
           if (chosen !== undefined) setLeadTransfer(workbench, chosen.id);
@@ -49,4 +60,4 @@ export function LeadColours({ lead }: { readonly lead: LeadMap }): React.JSX.Ele
       />
     </fieldset>
   );
-}
+});

@@ -1,4 +1,6 @@
 /** Top of the lead pane: which map, its limits in numbers, and how much of it is seen. */
+
+import { useCallback } from 'react';
 import { Button } from 'react-aria-components';
 import { useStore } from 'zustand';
 import { withUnit } from '../../science/format';
@@ -17,24 +19,15 @@ interface Props {
 
 export function LeadHeader({ lead, onOneToOne }: Props): React.JSX.Element {
   const workbench = useWorkbench();
-  const { choice, groups, limits } = lead;
+  const { choice, items, limits } = lead;
   const plainName = choice.name.replace(/\.err$/, '');
   const isError = plainName !== choice.name;
   const hasErrors = useResults(({ maps }) => (maps.get(plainName)?.errors ?? null) !== null);
   const text = formatLimits(limits, choice.unit);
-  const items = groups.map(({ title, maps }) => ({
-    title,
-    items: maps.map(({ name, title: words }) => ({ id: name, words })),
-  }));
+  const show = useCallback((name: string) => showLeadMap(workbench, name), [workbench]);
   return (
     <div className={styles.caption}>
-      <Choice
-        look="title"
-        label="Lead map"
-        value={plainName}
-        groups={items}
-        onChange={(name) => showLeadMap(workbench, name)}
-      />
+      <Choice look="title" label="Lead map" value={plainName} groups={items} onChange={show} />
       <small className={styles.limits} data-testid="lead-limits">
         {lead.map === null ? 'being made' : `${text.low} – ${withUnit(text.high, choice.unit)}`}
       </small>

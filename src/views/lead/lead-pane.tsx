@@ -11,6 +11,7 @@ import { useSession, useView } from '../workbench-context';
 import { LeadColours } from './lead-colours';
 import { LeadHeader } from './lead-header';
 import styles from './lead-pane.module.css';
+import { suitableScales } from './lead-scale';
 import { useLeadMap } from './use-lead-map';
 
 export function LeadPane(): React.JSX.Element | null {
@@ -39,7 +40,7 @@ function LeadOfScan({ meta }: { readonly meta: ScanMeta }): React.JSX.Element {
   return (
     <section className={styles.pane} aria-label="Lead map">
       <LeadHeader lead={lead} onOneToOne={showOneToOne} />
-      <LeadColours lead={lead} />
+      <LeadColours scale={lead.scale} scaleNames={suitableScales(limits).join(' ')} />
       <MapCanvas
         stageRef={stage}
         meta={meta}

@@ -27,14 +27,14 @@ export function formatLimit(value: number, span: number, unit: string): string {
     return formatCount(value);
   }
   if (!(span > 0) || !Number.isFinite(span)) return formatSignificant(value, 5);
-  if (unit === 'eV') return formatEnergy(value, span / 100).replace(/ eV$/, '');
+  if (unit === 'eV') return formatEnergy(value, span / 20).replace(/ eV$/, '');
   return formatSignificant(value, digitsFor(value, span));
 }
 
-/** Significant digits so that the last one stands for at most a twentieth of the span; 2 to 9. */
+/** Significant digits so that the last one stands for at most a hundredth of the span; 2 to 9. */
 function digitsFor(value: number, span: number): number {
   const exponentOf = (x: number): number => Number(x.toExponential(0).split('e')[1]);
   if (value === 0) return 2;
-  const digits = exponentOf(Math.abs(value)) - exponentOf(span / 20) + 1;
+  const digits = exponentOf(Math.abs(value)) - exponentOf(span / 100) + 1;
   return Math.min(Math.max(digits, 2), 9);
 }

@@ -10,6 +10,7 @@ import type { ScanPlan } from '../io/scan-plan';
 import { setScanChoices } from '../recipe/edits';
 import { mergeScanChoices } from '../recipe/merge-scan-choices';
 import type { Recipe } from '../recipe/schema';
+import type { ImportDraft } from './session-store';
 import { startingRecipe } from './starting-recipe';
 import type { Workbench } from './workbench';
 
@@ -24,7 +25,15 @@ export function beginImport(
 ): void {
   const choices: ScanChoices = recipe?.scan ?? {};
   workbench.session.setState({
-    draft: { inputs, choices, recipe, inspection: null, preview: null, isRevision: false },
+    draft: {
+      inputs,
+      choices,
+      recipe,
+      inspection: null,
+      preview: null,
+      isLooking: true,
+      isRevision: false,
+    },
   });
   lookAtDraft(workbench);
 }
@@ -41,6 +50,7 @@ export function reviseImport(workbench: Workbench): void {
       recipe: null,
       inspection: null,
       preview: null,
+      isLooking: true,
       isRevision: true,
     },
   });
@@ -52,7 +62,7 @@ export function stateChoices(workbench: Workbench, stated: ScanChoices): void {
   const { draft } = workbench.session.getState();
   if (draft === null) return;
   workbench.session.setState({
-    draft: { ...draft, choices: mergeScanChoices(draft.choices, stated) },
+    draft: { ...draft, choices: mergeScanChoices(draft.choices, stated), isLooking: true },
   });
   lookAtDraft(workbench);
 }
@@ -64,7 +74,7 @@ export function addCompanions(workbench: Workbench, files: readonly SourceHandle
   const names = new Set(files.map((file) => file.name));
   const others = draft.inputs.companions.filter((file) => !names.has(file.name));
   const inputs = { ...draft.inputs, companions: [...others, ...files] };
-  workbench.session.setState({ draft: { ...draft, inputs } });
+  workbench.session.setState({ draft: { ...draft, inputs, isLooking: true } });
   lookAtDraft(workbench);
 }
 
@@ -85,10 +95,11 @@ function lookAtDraft(workbench: Workbench): void {
     async () => {
       const inspection = await engine.inspect(draft.inputs, draft.choices);
       if (!isCurrent()) return;
-      session.setState({ draft: { ...draft, inspection, preview: null } });
+      const looked = { ...draft, inspection, isLooking: false };
+      session.setState({ draft: { ...looked, preview: null } });
       if (inspection.plan === null) return;
       const preview = await engine.preview(draft.inputs, inspection.plan);
-      if (isCurrent()) session.setState({ draft: { ...draft, inspection, preview } });
+      if (isCurrent()) session.setState({ draft: { ...looked, preview } });
     },
     (error) => {
       if (!isCurrent()) return;
@@ -98,11 +109,31 @@ function lookAtDraft(workbench: Workbench): void {
   );
 }
 
-/** Accepts the sheet. A revision becomes a recipe edit (and so can be undone); a new scan is loaded. */
+/** The draft once what was stated last has been looked at; null when the sheet is closed before. */
+function lookedAtDraft({ session }: Workbench): Promise<ImportDraft | null> {
+  return new Promise((resolve) => {
+    const { draft } = session.getState();
+    if (draft?.isLooking !== true) return resolve(draft);
+    const leave = session.subscribe(({ draft: now }) => {
+      if (now?.isLooking === true) return;
+      leave();
+      resolve(now);
+    });
+  });
+}
+
+/**
+ * Accepts the sheet, with what was stated last: a number is taken over as its field is left, by the very
+ * press on "Open". A revision becomes a recipe edit (and so can be undone); a new scan is loaded.
+ */
 export async function acceptImport(workbench: Workbench): Promise<void> {
-  const draft = workbench.session.getState().draft;
+  const accepted = workbench.session.getState().draft;
+  const draft = await lookedAtDraft(workbench);
   const plan = draft?.inspection?.plan ?? null;
   if (draft === null || plan === null) return;
+  // Not the sheet of another file that came meanwhile, nor one accepted by an earlier press.
+  if (draft.inputs.scan !== accepted?.inputs.scan) return;
+  if (workbench.session.getState().draft !== draft) return;
   workbench.session.setState({ draft: null });
   if (draft.isRevision) {
     const { scan } = workbench.session.getState();

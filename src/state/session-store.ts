@@ -16,6 +16,8 @@ export interface ImportDraft {
   readonly inspection: Inspection | null;
   /** null while it is being made, or when the scan cannot be read yet */
   readonly preview: Preview | null;
+  /** true until the file has been looked at with what was stated last; `inspection` is of what was stated before */
+  readonly isLooking: boolean;
   /** true when the sheet corrects the scan on screen instead of opening another */
   readonly isRevision: boolean;
 }

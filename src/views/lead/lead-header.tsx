@@ -19,17 +19,17 @@ interface Props {
 
 export function LeadHeader({ lead, onOneToOne }: Props): React.JSX.Element {
   const workbench = useWorkbench();
-  const { choice, items, limits } = lead;
+  const { choice, items, limits, unit } = lead;
   const plainName = choice.name.replace(/\.err$/, '');
   const isError = plainName !== choice.name;
   const hasErrors = useResults(({ maps }) => (maps.get(plainName)?.errors ?? null) !== null);
-  const text = formatLimits(limits, choice.unit);
+  const text = formatLimits(limits, unit);
   const show = useCallback((name: string) => showLeadMap(workbench, name), [workbench]);
   return (
     <div className={styles.caption}>
       <Choice look="title" label="Lead map" value={plainName} groups={items} onChange={show} />
       <small className={styles.limits} data-testid="lead-limits">
-        {lead.map === null ? 'being made' : `${text.low} – ${withUnit(text.high, choice.unit)}`}
+        {lead.map === null ? 'being made' : `${text.low} – ${withUnit(text.high, unit)}`}
       </small>
       <span className={styles.tools}>
         {hasErrors && (

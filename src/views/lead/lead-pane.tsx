@@ -49,7 +49,7 @@ function LeadOfScan({ meta }: { readonly meta: ScanMeta }): React.JSX.Element {
         describePixel={describePixel}
         corner={
           hasValues && (
-            <ColourBar table={table} limits={limits} transfer={transfer} unit={choice.unit} />
+            <ColourBar table={table} limits={limits} transfer={transfer} unit={lead.unit} />
           )
         }
         message={map !== null && !hasValues ? 'This map has no value at any pixel.' : null}

@@ -19,6 +19,8 @@ export interface LeadMap {
   readonly image: MapPicture | null;
   /** NaN while there is no map */
   readonly limits: Limits;
+  /** the map's own: a scan may hold something else than counts */
+  readonly unit: string;
   readonly scale: string;
   readonly table: Uint8Array;
 }
@@ -35,7 +37,7 @@ export function useLeadMap(): LeadMap {
   const transfer = useView((view) => view.transfer);
 
   const { groups, items } = useMapChoices();
-  const choice = choiceOf(groups, wanted) ?? total;
+  const choice = choiceOf(groups, wanted) ?? choiceOf(groups, total.name) ?? total;
   const map = useMemo(
     () => mapByName((name) => known.get(name), choice.name),
     [known, choice.name],

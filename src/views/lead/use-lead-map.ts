@@ -46,13 +46,6 @@ export function useLeadMap(): LeadMap {
   const scale = shownScale(wantedScale, limits);
   const table = useMemo(() => scaleTable(scale, limits), [scale, limits]);
   const image = useMapImage(map, table, low, high, transfer);
-  return {
-    choice: map === null ? choice : { ...choice, unit: map.unit },
-    items,
-    map,
-    image,
-    limits,
-    scale,
-    table,
-  };
+  const unit = map?.unit ?? choice.unit;
+  return { choice, items, map, image, limits, unit, scale, table };
 }

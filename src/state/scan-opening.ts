@@ -78,6 +78,16 @@ export function addCompanions(workbench: Workbench, files: readonly SourceHandle
   lookAtDraft(workbench);
 }
 
+/** Takes a file given beside the scan away again. */
+export function removeCompanion(workbench: Workbench, name: string): void {
+  const { draft } = workbench.session.getState();
+  if (draft === null) return;
+  const companions = draft.inputs.companions.filter((file) => file.name !== name);
+  const inputs = { ...draft.inputs, companions };
+  workbench.session.setState({ draft: { ...draft, inputs, isLooking: true } });
+  lookAtDraft(workbench);
+}
+
 export function cancelImport(workbench: Workbench): void {
   looking.clear();
   workbench.session.setState({ draft: null });

@@ -8,6 +8,7 @@ import styles from './import-sheet.module.css';
 
 interface Props {
   readonly guess: Guess;
+  readonly hasLabel: boolean;
   readonly onState: (stated: ScanChoices) => void;
   /** fields for numbers the user may state */
   readonly children?: React.ReactNode;
@@ -15,9 +16,9 @@ interface Props {
 
 const asItIs = 'as it is';
 
-export function GuessRow({ guess, onState, children }: Props): React.JSX.Element {
+export function GuessRow(props: Props): React.JSX.Element {
+  const { guess, hasLabel, onState, children } = props;
   const { field, label, source, alternatives } = guess;
-  const hasFields = children !== undefined && source !== 'missing';
   const groups = useMemo(
     () => [
       {
@@ -34,10 +35,11 @@ export function GuessRow({ guess, onState, children }: Props): React.JSX.Element
     <div
       className={`${styles.row} ${source === 'missing' ? styles.missing : ''}`}
       data-field={field}
+      data-missing={source === 'missing' || undefined}
     >
       <span className={styles.field}>{fieldWords[field]}</span>
       <div className={styles.value}>
-        {alternatives.length === 0 && !hasFields && <span className={styles.plain}>{label}</span>}
+        {hasLabel && <span className={styles.plain}>{label}</span>}
         {alternatives.length > 0 && (
           <Choice
             label={fieldWords[field]}

@@ -1,5 +1,6 @@
-/** The words of the import sheet: what each guess is about, and where it comes from. */
-import type { Guess, GuessField } from '../../io/scan-plan';
+/** The words of the import sheet: what each guess is about, where it comes from, what is still needed. */
+import type { Guess, GuessField, Inspection } from '../../io/scan-plan';
+import { shownGuesses } from './shown-guesses';
 
 export const fieldWords: Readonly<Record<GuessField, string>> = {
   data: 'Spectra',
@@ -24,7 +25,25 @@ export const sourceWords: Readonly<Record<Guess['source'], string>> = {
   absent: 'not known',
 };
 
-/** Evidence as a sentence beside its source; the evidence of what is stated says so by itself. */
+/**
+ * Evidence as a sentence beside its source; the evidence of what is stated says so by itself. On the sheet
+ * it is as a rule the user who stated it, by whom the recipe is not yet seen as one.
+ */
 export function evidenceInWords({ source, evidence }: Guess): string {
-  return source === 'stated' ? evidence : `${sourceWords[source]}: ${evidence}`;
+  if (source === 'stated') return evidence.replace(/^stated by the recipe/, 'as stated');
+  return `${sourceWords[source]}: ${evidence}`;
+}
+
+/** Why a scan cannot be opened yet: "Needed: spectral axis, laser"; "" when it can. */
+export function hindranceInWords(inspection: Inspection | null): string {
+  if (inspection === null || inspection.plan !== null) return '';
+  const { missing } = shownGuesses(inspection);
+  if (missing.length === 0) return 'It cannot be opened as it is: see above.';
+  return `Needed: ${missing.map((field) => fieldWords[field].toLowerCase()).join(', ')}`;
+}
+
+/** A sentence begins with a capital, but a file's name or path is left as it is. */
+export function capitalised(text: string): string {
+  const [word = ''] = text.split(' ', 1);
+  return /[./_]/.test(word) ? text : text.replace(/^./, (first) => first.toUpperCase());
 }

@@ -1,16 +1,16 @@
 /** The sheet on which a scan is opened: what was guessed, why, and what the user says instead. */
-import { useRef } from 'react';
+import { useEffect, useRef } from 'react';
 import { Button, Dialog, Heading, Modal, ModalOverlay } from 'react-aria-components';
-import type { ScanChoices } from '../../io/scan-choices';
-import type { Guess } from '../../io/scan-plan';
-import { openFiles } from '../../state/opened-files';
-import { acceptImport, cancelImport, stateChoices } from '../../state/scan-opening';
+import { scanInWords } from '../../state/cursor-place';
+import { acceptImport, cancelImport } from '../../state/scan-opening';
 import type { ImportDraft } from '../../state/session-store';
 import { useSession, useWorkbench } from '../workbench-context';
-import { GuessRow } from './guess-row';
+import { CompanionFiles } from './companion-files';
+import { GuessList } from './guess-list';
+import { capitalised, hindranceInWords } from './guess-words';
 import styles from './import-sheet.module.css';
 import { PreviewView } from './preview-view';
-import { AxisEntry, DetectorEntry, ExposureEntry, LaserEntry, PitchEntry } from './stated-numbers';
+import { shownGuesses } from './shown-guesses';
 
 export function ImportSheet(): React.JSX.Element {
   const workbench = useWorkbench();
@@ -24,7 +24,9 @@ export function ImportSheet(): React.JSX.Element {
       }}
     >
       <Modal className={styles.modal ?? ''}>
-        <Dialog className={styles.sheet ?? ''}>{draft !== null && <Sheet draft={draft} />}</Dialog>
+        <Dialog className={styles.sheet ?? ''}>
+          {draft !== null && <Sheet key={draft.inputs.scan.name} draft={draft} />}
+        </Dialog>
       </Modal>
     </ModalOverlay>
   );
@@ -32,50 +34,34 @@ export function ImportSheet(): React.JSX.Element {
 
 function Sheet({ draft }: { readonly draft: ImportDraft }): React.JSX.Element {
   const workbench = useWorkbench();
-  const { inspection, preview, inputs, isRevision } = draft;
-  const plan = inspection?.plan ?? null;
-  // What does not apply to this scan (a pitch of one spectrum) is no question.
-  const guesses = inspection?.guesses.filter(({ label }) => label !== '–') ?? [];
-  const isAsked = guesses.some(({ source }) => source === 'missing');
-  const onState = (stated: ScanChoices): void => stateChoices(workbench, stated);
+  const { inspection, inputs, isLooking, isRevision } = draft;
+  const canOpen = inspection !== null && inspection.plan !== null;
+  const { guesses, open } = useFocusOfNeed(inspection);
   return (
     <>
       <header className={styles.header}>
         <Heading slot="title">{inputs.scan.name}</Heading>
-        <span>{inspection === null ? 'looking …' : inspection.format}</span>
+        <span>{inspection?.format ?? ''}</span>
       </header>
       <div className={styles.body}>
         <div className={styles.side}>
-          <PreviewView preview={preview} plan={plan} />
+          <PreviewView draft={draft} />
           <CompanionFiles draft={draft} />
         </div>
-        <div className={styles.guesses} aria-busy={inspection === null}>
-          {inspection?.problems.map(({ what, hint }) => (
-            <p key={what} className={styles.problem} role="alert">
-              {capitalised(what)}. <span>{isAsked ? 'State it below.' : hint}</span>
-            </p>
-          ))}
-          {inspection?.warnings.map((warning) => (
-            <p key={warning} className={styles.warning}>
-              {capitalised(warning)}
-            </p>
-          ))}
-          {guesses.map((guess) => (
-            <GuessRow key={guess.field} guess={guess} onState={onState}>
-              {numbersOf(guess, draft, onState)}
-            </GuessRow>
-          ))}
+        <div className={styles.guesses} aria-busy={isLooking} ref={guesses}>
+          <Sayings draft={draft} />
+          <GuessList draft={draft} />
         </div>
       </div>
       <footer className={styles.footer}>
-        <span>
-          {plan === null && inspection !== null ? 'It can be opened once the above is stated.' : ''}
-        </span>
-        <Button onPress={() => cancelImport(workbench)}>Cancel</Button>
+        <span role="status">{statusOf(draft)}</span>
+        <Button className={styles.cancel ?? ''} onPress={() => cancelImport(workbench)}>
+          Cancel
+        </Button>
         <Button
           className={styles.primary ?? ''}
-          autoFocus
-          isDisabled={plan === null}
+          ref={open}
+          isDisabled={!canOpen}
           onPress={() => void acceptImport(workbench)}
         >
           {isRevision ? 'Read again' : 'Open'}
@@ -85,63 +71,49 @@ function Sheet({ draft }: { readonly draft: ImportDraft }): React.JSX.Element {
   );
 }
 
-function numbersOf(
-  guess: Guess,
-  draft: ImportDraft,
-  onState: (stated: ScanChoices) => void,
-): React.JSX.Element | undefined {
-  // What was found stands in the fields, so that a small correction is a small one.
-  const choices = { ...draft.inspection?.plan?.resolved, ...draft.choices };
-  switch (guess.field) {
-    case 'laser':
-      return <LaserEntry choices={choices} onState={onState} />;
-    case 'pixel':
-      return <PitchEntry choices={choices} onState={onState} />;
-    case 'exposure':
-      return <ExposureEntry choices={choices} onState={onState} />;
-    case 'axis':
-      return guess.source === 'missing' ? (
-        <AxisEntry choices={choices} onState={onState} />
-      ) : undefined;
-    case 'noise':
-      return draft.choices.detector === undefined ? undefined : (
-        <DetectorEntry detector={draft.choices.detector} onState={onState} />
-      );
-    default:
-      return undefined;
-  }
+/**
+ * The focus is first on the number that is needed, or else on the button that opens the scan; when
+ * something else turns out to be needed, there, unless the user is at another guess.
+ */
+function useFocusOfNeed(inspection: ImportDraft['inspection']) {
+  const guesses = useRef<HTMLDivElement>(null);
+  const open = useRef<HTMLButtonElement>(null);
+  const isLookedAt = inspection !== null;
+  const [need = null] = shownGuesses(inspection).missing;
+  useEffect(() => {
+    if (isLookedAt) open.current?.focus();
+  }, [isLookedAt]);
+  useEffect(() => {
+    const rows = guesses.current;
+    if (need === null || rows === null || rows.contains(document.activeElement)) return;
+    rows.querySelector<HTMLElement>(`[data-field=${need}] input[inputmode]`)?.focus();
+  }, [need]);
+  return { guesses, open };
 }
 
-function CompanionFiles({ draft }: { readonly draft: ImportDraft }): React.JSX.Element {
-  const workbench = useWorkbench();
-  const input = useRef<HTMLInputElement>(null);
-  const { companions } = draft.inputs;
+/** What is in the way, and what else the user should know. */
+function Sayings({ draft }: { readonly draft: ImportDraft }): React.JSX.Element {
+  const { inspection } = draft;
+  const isAsked = shownGuesses(inspection).missing.length > 0;
   return (
-    <div className={styles.companions}>
-      {companions.length > 0 && (
-        <ul aria-label="Files beside the scan">
-          {companions.map(({ name }) => (
-            <li key={name}>{name}</li>
-          ))}
-        </ul>
-      )}
-      <input
-        ref={input}
-        type="file"
-        multiple
-        hidden
-        data-testid="companion-input"
-        onChange={(event) => {
-          const files = [...(event.target.files ?? [])];
-          event.target.value = '';
-          if (files.length > 0) void openFiles(workbench, files);
-        }}
-      />
-      <Button onPress={() => input.current?.click()}>Add a height map or an axis …</Button>
-    </div>
+    <>
+      {inspection?.problems.map(({ what, hint }) => (
+        <p key={what} className={styles.problem} role="alert">
+          {capitalised(what)}. <span>{isAsked ? 'State it here.' : hint}</span>
+        </p>
+      ))}
+      {inspection?.warnings.map((warning) => (
+        <p key={warning} className={styles.warning}>
+          {capitalised(warning)}
+        </p>
+      ))}
+    </>
   );
 }
 
-function capitalised(text: string): string {
-  return text.replace(/^./, (first) => first.toUpperCase());
+function statusOf({ inspection, inputs, isLooking }: ImportDraft): string {
+  if (isLooking) return `Looking at ${inputs.scan.name} …`;
+  const plan = inspection?.plan ?? null;
+  if (plan === null) return hindranceInWords(inspection);
+  return scanInWords(plan.meta, plan.resolved.axis?.medium ?? 'air');
 }

@@ -1,20 +1,27 @@
-/** The numbers a file may not tell: laser, pitch, exposure, the ends of the axis, the detector. */
+/** The numbers a file may not tell: laser, pitch, exposure, the detector. */
 import { useState } from 'react';
 import type { ScanChoices } from '../../io/scan-choices';
-import { Choice } from '../forms/choice';
-import { NumberEntry } from '../forms/number-entry';
+import type { ScanShape } from '../../science/scan';
+import { Choice, type ChoiceItems } from '../forms/choice';
 import styles from './import-sheet.module.css';
+import { shownPitch } from './shown-pitch';
+import { StatedNumber } from './stated-number';
 
-interface Props {
-  readonly choices: ScanChoices;
+export interface StatedProps {
+  /** what the user has stated */
+  readonly stated: ScanChoices;
+  /** what is stated, and what was found where it was not */
+  readonly known: ScanChoices;
   readonly onState: (stated: ScanChoices) => void;
 }
 
 type LaserUnit = NonNullable<ScanChoices['laser']>['unit'];
 
-const unitGroups = (units: readonly (readonly [string, string])[]) => [
-  { title: '', items: units.map(([id, words]) => ({ id, words })) },
-];
+export function unitGroups(
+  units: readonly (readonly [id: string, words: string])[],
+): readonly ChoiceItems[] {
+  return [{ title: '', items: units.map(([id, words]) => ({ id, words })) }];
+}
 
 const laserUnits = unitGroups([
   ['nm', 'nm'],
@@ -22,19 +29,18 @@ const laserUnits = unitGroups([
   ['cm-1', 'cm⁻¹'],
 ]);
 
-export function LaserEntry({ choices, onState }: Props): React.JSX.Element {
-  const { laser } = choices;
-  const [unit, setUnit] = useState<LaserUnit>(laser?.unit ?? 'nm');
-  const state = (value: number, inUnit: LaserUnit): void => {
-    if (value > 0) onState({ laser: { value, unit: inUnit } });
-  };
+export function LaserEntry({ known, onState }: StatedProps): React.JSX.Element {
+  const { laser } = known;
+  // A unit chosen before there is a number.
+  const [wanted, setWanted] = useState<LaserUnit>('nm');
+  const unit = laser?.unit ?? wanted;
   return (
     <div className={styles.numbers}>
-      <NumberEntry
+      <StatedNumber
         label="Laser"
-        value={laser?.value ?? Number.NaN}
-        step={0.1}
-        onChange={(value) => state(value, unit)}
+        value={laser?.value ?? null}
+        rule="positive"
+        onState={(value) => onState({ laser: { value, unit } })}
       />
       <Choice
         label="Unit of the laser"
@@ -42,8 +48,8 @@ export function LaserEntry({ choices, onState }: Props): React.JSX.Element {
         groups={laserUnits}
         onChange={(id) => {
           const next: LaserUnit = id === 'eV' || id === 'cm-1' ? id : 'nm';
-          setUnit(next);
-          if (laser !== undefined) state(laser.value, next);
+          setWanted(next);
+          if (laser !== undefined) onState({ laser: { value: laser.value, unit: next } });
         }}
       />
     </div>
@@ -53,121 +59,89 @@ export function LaserEntry({ choices, onState }: Props): React.JSX.Element {
 const lengthUnits = unitGroups([
   ['nm', 'nm'],
   ['um', 'µm'],
+  ['mm', 'mm'],
 ]);
 
-export function PitchEntry({ choices, onState }: Props): React.JSX.Element {
-  const { pixel } = choices;
-  const [unit, setUnit] = useState(pixel?.unit ?? 'nm');
-  const state = (x: number, y: number, inUnit: string): void => {
-    const [across, down] = [x > 0 ? x : y, y > 0 ? y : x];
-    if (across > 0 && down > 0) onState({ pixel: { x: across, y: down, unit: inUnit } });
+interface PitchProps extends StatedProps {
+  /** null while the scan cannot be read */
+  readonly shape: ScanShape | null;
+}
+
+export function PitchEntry({ stated, known, shape, onState }: PitchProps): React.JSX.Element {
+  const pitch = known.pixel === undefined ? null : shownPitch(known.pixel);
+  const [wanted, setWanted] = useState('nm');
+  // Until the other direction is entered for itself, it goes along.
+  const [own, setOwn] = useState({ x: pitch !== null, y: pitch !== null });
+  const unit = pitch?.unit ?? wanted;
+  const isOther = !lengthUnits.some(({ items }) => items.some(({ id }) => id === unit));
+  const shown = pitch !== null && isOther && stated.pixel === undefined ? null : pitch;
+  const [hasX, hasY] = [shape === null || shape.nx > 1, shape === null || shape.ny > 1];
+  const state = (along: 'x' | 'y', value: number): void => {
+    const other = along === 'x' ? 'y' : 'x';
+    const otherValue = own[other] && shown !== null ? shown[other] : value;
+    setOwn({ ...own, [along]: true });
+    const [x, y] = along === 'x' ? [value, otherValue] : [otherValue, value];
+    onState({ pixel: { x, y, unit } });
   };
-  const [x, y] = [pixel?.x ?? Number.NaN, pixel?.y ?? Number.NaN];
   return (
     <div className={styles.numbers}>
-      <NumberEntry label="x" value={x} step={1} onChange={(next) => state(next, y, unit)} />
-      <NumberEntry label="y" value={y} step={1} onChange={(next) => state(x, next, unit)} />
+      {(['x', 'y'] as const)
+        .filter((along) => (along === 'x' ? hasX : hasY))
+        .map((along) => (
+          <StatedNumber
+            key={along}
+            label={along}
+            isLabelShown
+            value={shown?.[along] ?? null}
+            rule="positive"
+            onState={(value) => state(along, value)}
+          />
+        ))}
       <Choice
         label="Unit of the pitch"
         value={unit}
-        groups={lengthUnits}
+        groups={isOther ? [...lengthUnits, ...unitGroups([[unit, unit]])] : lengthUnits}
         onChange={(next) => {
-          setUnit(next);
-          if (pixel !== undefined) state(x, y, next);
+          setWanted(next);
+          if (shown !== null) onState({ pixel: { x: shown.x, y: shown.y, unit: next } });
         }}
       />
     </div>
   );
 }
 
-export function ExposureEntry({ choices, onState }: Props): React.JSX.Element {
+export function ExposureEntry({ known, onState }: StatedProps): React.JSX.Element {
   return (
     <div className={styles.numbers}>
-      <NumberEntry
-        label="seconds"
-        value={choices.exposure_s ?? Number.NaN}
-        step={0.1}
-        onChange={(value) => {
-          if (value > 0) onState({ exposure_s: value });
-        }}
+      <StatedNumber
+        label="Exposure, seconds"
+        value={known.exposure_s ?? null}
+        rule="positive"
+        onState={(value) => onState({ exposure_s: value })}
       />
-    </div>
-  );
-}
-
-const axisKinds = unitGroups([
-  ['wavelength nm', 'wavelength, nm'],
-  ['energy eV', 'photon energy, eV'],
-  ['energy cm-1', 'wavenumber of the light, cm⁻¹'],
-  ['shift cm-1', 'Raman shift, cm⁻¹'],
-]);
-
-/** The ends of an evenly spaced axis, where the file has none. */
-export function AxisEntry({ onState }: Props): React.JSX.Element {
-  const [from, setFrom] = useState(Number.NaN);
-  const [to, setTo] = useState(Number.NaN);
-  const [kindAndUnit, setKindAndUnit] = useState('wavelength nm');
-  const state = (low: number, high: number, as: string): void => {
-    const [kind, unit] = as.split(' ');
-    if (!Number.isFinite(low) || !Number.isFinite(high) || low === high) return;
-    if (kind !== 'wavelength' && kind !== 'energy' && kind !== 'shift') return;
-    onState({ axis: { from: low, to: high, kind, ...(unit === undefined ? {} : { unit }) } });
-  };
-  return (
-    <div className={styles.numbers}>
-      <NumberEntry
-        label="first channel"
-        value={from}
-        step={1}
-        onChange={(next) => {
-          setFrom(next);
-          state(next, to, kindAndUnit);
-        }}
-      />
-      <NumberEntry
-        label="last channel"
-        value={to}
-        step={1}
-        onChange={(next) => {
-          setTo(next);
-          state(from, next, kindAndUnit);
-        }}
-      />
-      <Choice
-        label="Kind and unit of the axis"
-        value={kindAndUnit}
-        groups={axisKinds}
-        onChange={(next) => {
-          setKindAndUnit(next);
-          state(from, to, next);
-        }}
-      />
+      <span>s</span>
     </div>
   );
 }
 
 const detectorFields = [
-  { field: 'electrons_per_count', words: 'electrons per count', usual: 1 },
-  { field: 'offset_counts', words: 'offset, counts', usual: 0 },
-  { field: 'read_noise_e', words: 'read noise, electrons', usual: 0 },
-  { field: 'excess_noise', words: 'excess noise factor', usual: 1 },
+  { field: 'electrons_per_count', words: 'electrons per count', usual: 1, rule: 'positive' },
+  { field: 'offset_counts', words: 'offset, counts', usual: 0, rule: 'any' },
+  { field: 'read_noise_e', words: 'read noise, electrons', usual: 0, rule: 'not negative' },
+  { field: 'excess_noise', words: 'excess noise factor', usual: 1, rule: 'at least one' },
 ] as const;
 
-interface DetectorProps {
-  readonly detector: NonNullable<ScanChoices['detector']>;
-  readonly onState: (stated: ScanChoices) => void;
-}
-
-export function DetectorEntry({ detector, onState }: DetectorProps): React.JSX.Element {
+export function DetectorEntry({ known, onState }: StatedProps): React.JSX.Element {
   return (
-    <div className={styles.numbers}>
-      {detectorFields.map(({ field, words, usual }) => (
-        <NumberEntry
+    <div className={styles.detector}>
+      {detectorFields.map(({ field, words, usual, rule }) => (
+        <StatedNumber
           key={field}
           label={words}
-          value={detector[field] ?? usual}
-          step={1}
-          onChange={(value) => onState({ detector: { [field]: value } })}
+          isLabelShown
+          value={known.detector?.[field] ?? usual}
+          rule={rule}
+          onState={(value) => onState({ detector: { [field]: value } })}
         />
       ))}
     </div>

@@ -1,0 +1,48 @@
+import { expect, test } from '@playwright/test';
+import { demoRecipe, replay } from './command-line';
+import { blendMap, colourAt, openDemo, savedRecipe } from './workbench-page';
+
+const pixels = [
+  { x: 5, y: 5 },
+  { x: 20, y: 40 },
+  { x: 12, y: 9 },
+  { x: 50, y: 30 },
+];
+
+test.beforeEach(async ({ page }) => openDemo(page));
+
+test('the blend on screen is the picture the command line writes', async ({ page }) => {
+  const results = replay(demoRecipe());
+  for (const pixel of pixels) {
+    expect(await colourAt(blendMap(page), pixel)).toEqual(results.blendAt(pixel));
+  }
+});
+
+test('gamma by keys and mixing by click change the picture as the recipe says', async ({
+  page,
+}) => {
+  const pixel = { x: 20, y: 40 };
+  const before = await colourAt(blendMap(page), pixel);
+  const gamma = page.getByRole('slider', { name: /gamma/i }).first();
+  await gamma.focus();
+  for (let press = 0; press < 5; press++) await page.keyboard.press('ArrowRight');
+  await page.getByText('screen', { exact: true }).click();
+  await expect.poll(() => colourAt(blendMap(page), pixel)).not.toEqual(before);
+  const { text } = await savedRecipe(page);
+  const { mode, channels } = JSON.parse(text).blend;
+  expect(mode).toBe('screen');
+  expect(channels[0].gamma).toBeGreaterThan(1);
+  const results = replay(text);
+  for (const place of pixels) {
+    expect(await colourAt(blendMap(page), place)).toEqual(results.blendAt(place));
+  }
+});
+
+test('a channel is added, taken out, and brought back by undo', async ({ page }) => {
+  const channels = async (): Promise<number> =>
+    JSON.parse((await savedRecipe(page)).text).blend.channels.length;
+  await page.getByRole('button', { name: 'Add channel' }).click();
+  expect(await channels()).toBe(4);
+  await page.keyboard.press('Control+z');
+  expect(await channels()).toBe(3);
+});

@@ -1,0 +1,71 @@
+import { gzipSync } from 'node:zlib';
+import { expect, test } from '@playwright/test';
+import { leadMap, openDemo, pointAt, scanLine, valueShown, watch } from './workbench-page';
+
+test('the demo scan opens by itself, without a fault, asking nobody else for anything', async ({
+  page,
+}) => {
+  const { faults, requests } = watch(page);
+  await openDemo(page);
+  await pointAt(page, leadMap(page), { x: 20, y: 40 });
+  // Told, not tested: how fast a machine is says nothing of the program.
+  const seconds = await page.evaluate(() => performance.now() / 1000);
+  test.info().annotations.push({ type: 'on screen after', description: `${seconds.toFixed(2)} s` });
+  await expect(scanLine(page)).toHaveText(
+    'tent-field.h5 · 64 × 64 px · 15 nm/px · 512 ch · 594.1 nm',
+  );
+  expect(faults).toEqual([]);
+  const origins = new Set(requests.map((url) => new URL(url).origin));
+  expect([...origins].filter((origin) => origin !== 'null')).toEqual([new URL(page.url()).origin]);
+});
+
+test('a map hangs from every band, in order of energy', async ({ page }) => {
+  await openDemo(page);
+  const tiles = page.getByRole('button', { name: /^Map of band/ });
+  await expect(tiles).toHaveText([/^tail/, /^shoulder/, /^exciton/, /^A1/, /^2LA/]);
+  const lefts = await tiles.evaluateAll((all) => all.map((tile) => tile.getBoundingClientRect().x));
+  expect(lefts).toEqual([...lefts].sort((a, b) => a - b));
+  const brightest = await tiles
+    .first()
+    .locator('canvas')
+    .evaluate((canvas: HTMLCanvasElement) => {
+      const data = canvas.getContext('2d')?.getImageData(0, 0, canvas.width, canvas.height).data;
+      return Math.max(...(data ?? [0]).filter((_: number, index: number) => index % 4 === 0));
+    });
+  expect(brightest).toBeGreaterThan(200);
+});
+
+test('the script before the spectrum library is under 350 kB, compressed', async ({ page }) => {
+  const scripts: { url: string; bytes: number; size: number }[] = [];
+  page.on('response', async (response) => {
+    if (!response.url().endsWith('.js')) return;
+    const body = await response.body();
+    scripts.push({ url: response.url(), bytes: gzipSync(body).length, size: body.length });
+  });
+  await openDemo(page);
+  await expect(page.locator('[data-testid="spectrum-plot"] .main-svg').first()).toBeAttached();
+  const entry = await page.locator('script[type="module"]').getAttribute('src');
+  const first = scripts.filter(({ url }) => url.endsWith((entry ?? '?').replace('./', '')));
+  const library = scripts.filter(({ size, url }) => size > 900_000 && !url.includes('hdf5'));
+  expect(first).toHaveLength(1);
+  expect(library).toHaveLength(1);
+  expect(first[0]?.bytes).toBeLessThan(350 * 1024);
+  expect(library[0]?.url).not.toBe(first[0]?.url);
+});
+
+test('what the page may do is only what it needs', async ({ page }) => {
+  const response = await page.goto('/');
+  const policy = response?.headers()['content-security-policy'] ?? '';
+  expect(policy).toContain("default-src 'self'");
+  expect(policy).not.toContain('unsafe-inline');
+  expect(policy).not.toContain("'unsafe-eval'");
+  expect(await page.evaluate(() => window.crossOriginIsolated)).toBe(true);
+});
+
+test('values of the last pin stand in the column before anything is pointed at', async ({
+  page,
+}) => {
+  await openDemo(page);
+  await expect(page.getByRole('heading', { name: 'Pixel 32, 33' })).toBeVisible();
+  await expect(valueShown(page, 'scan.height')).toHaveText(/^\d+\.\d+ nm$/);
+});

@@ -9,6 +9,6 @@
 export function timeLeft(share: number, elapsedMs: number): string {
   if (!(share > 0.02) || share >= 1) return '';
   const seconds = (elapsedMs * (1 - share)) / share / 1000;
-  if (seconds < 10) return `${seconds.toFixed(1)} s left`;
-  return seconds < 100 ? `${seconds.toFixed(0)} s left` : `${(seconds / 60).toFixed(0)} min left`;
+  if (seconds < 9.95) return `${seconds.toFixed(1)} s left`;
+  return seconds < 99.5 ? `${seconds.toFixed(0)} s left` : `${(seconds / 60).toFixed(0)} min left`;
 }

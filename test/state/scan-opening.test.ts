@@ -12,29 +12,36 @@ import {
   reviseImport,
   stateChoices,
 } from '../../src/state/scan-opening';
-import { type CurrentScan, createSessionStore } from '../../src/state/session-store';
+import { createSessionStore } from '../../src/state/session-store';
 import type { Workbench } from '../../src/state/workbench';
-import type { ScanInputs } from '../../workers/engine';
+import type { OpenScan, ScanEngine, ScanInputs } from '../../workers/engine';
 
 const file = (name: string) => ({ kind: 'path', name, path: name }) as const;
 
 /** An engine that looks at files only as far as the test lets it. */
 function bench() {
   const looks: { choices: ScanChoices; inputs: ScanInputs; end: () => void }[] = [];
-  const engine = {
+  const preview = {
+    ny: 1,
+    nx: 1,
+    totals: Float64Array.of(1),
+    meanSpectrum: Float64Array.of(1),
+    step: 1,
+  };
+  const engine: Pick<ScanEngine, 'inspect' | 'preview'> = {
     inspect: (inputs: ScanInputs, choices: ScanChoices) =>
       new Promise<Inspection>((resolve) => {
         const plan = { resolved: choices } as ScanPlan;
         const found = { fileName: '', format: 'npy', guesses: [], problems: [], warnings: [] };
         looks.push({ choices, inputs, end: () => resolve({ ...found, plan } as Inspection) });
       }),
-    preview: async () => null,
+    preview: async () => preview,
   };
   const session = createSessionStore();
   const recipe = createRecipeStore(emptyRecipe(''));
-  const scan = { inputs: { scan: file('scan.npy'), companions: [] }, url: null };
-  session.setState({ scan: scan as unknown as CurrentScan });
-  const workbench = { engine, session, recipe, notices: createNotices() } as unknown as Workbench;
+  const inputs = { scan: file('scan.npy'), companions: [] };
+  session.setState({ scan: { inputs, url: null, open: {} as OpenScan } });
+  const workbench = { engine, session, recipe, notices: createNotices() } as Workbench;
   const settle = async (): Promise<void> => {
     for (let i = 0; i < 10; i++) await Promise.resolve();
   };

@@ -1,4 +1,5 @@
 /** Keeps the spectra on screen in step with the pins of the recipe and with the crosshair. */
+import type { Pixel } from '../../workers/engine';
 import { createLatestWins } from '../../workers/latest-wins';
 import type { Pin } from '../recipe/schema';
 import type { CurrentScan } from './session-store';
@@ -46,8 +47,9 @@ export function followSpectra(workbench: Workbench): () => void {
     }),
     session.subscribe((now, before) => {
       if (now.scanNumber === before.scanNumber) return;
-      crosshair.set(null);
       spectra.setState({ pins: new Map(), hovered: null });
+      if (isOnScan(now.scan, crosshair.get())) updateHover();
+      else crosshair.set(null);
       updatePins();
     }),
   ];
@@ -55,6 +57,12 @@ export function followSpectra(workbench: Workbench): () => void {
   return () => {
     for (const unsubscribe of unsubscribers) unsubscribe();
   };
+}
+
+function isOnScan(scan: CurrentScan | null, pixel: Pixel | null): boolean {
+  if (scan === null || pixel === null) return false;
+  const { ny, nx } = scan.open.plan.meta.shape;
+  return pixel.y < ny && pixel.x < nx;
 }
 
 /** Spectra of the pins that lie on the scan; what is already known of the same scan is not read again. */

@@ -21,7 +21,8 @@ test('the blend on screen is the picture the command line writes', async ({ page
 test('gamma by keys and mixing by click change the picture as the recipe says', async ({
   page,
 }) => {
-  const pixel = { x: 20, y: 40 };
+  // On the bright rim, where the first channel gives most of the light.
+  const pixel = { x: 31, y: 40 };
   const before = await colourAt(blendMap(page), pixel);
   const gamma = page.getByRole('slider', { name: /gamma/i }).first();
   await gamma.focus();

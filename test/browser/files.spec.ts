@@ -49,9 +49,9 @@ test('a file that does not say its axis is asked about, and opens with the answe
   await expect(sheet.getByRole('alert').first()).toBeVisible();
   await expect(sheet.getByRole('button', { name: 'Open' })).toBeDisabled();
   const axis = sheet.locator('[data-field="axis"]');
-  await axis.getByRole('textbox', { name: 'first channel' }).fill('600');
-  await axis.getByRole('textbox', { name: 'last channel' }).fill('639');
-  await axis.getByRole('textbox', { name: 'last channel' }).press('Enter');
+  await axis.getByRole('textbox', { name: 'from' }).fill('600');
+  await axis.getByRole('textbox', { name: 'to' }).fill('639');
+  await axis.getByRole('textbox', { name: 'to' }).press('Enter');
   await expect(sheet.getByRole('button', { name: 'Open' })).toBeEnabled();
   await sheet.getByRole('button', { name: 'Open' }).click();
   await expect(scanLine(page)).toContainText('bare.npy · 3 × 2 px');

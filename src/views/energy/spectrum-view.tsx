@@ -51,7 +51,7 @@ export function SpectrumView({ evToX, widthPx, heightPx }: Props): React.JSX.Ele
       name: `pin ${name}`,
       energiesEv,
       counts,
-      colour: pinColour(name),
+      colour: pinColour(name, theme),
       widthPx: 1.2,
     }));
     return [mean, ...pinned];

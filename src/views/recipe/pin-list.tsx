@@ -4,11 +4,12 @@ import { Button, Input, TextField } from 'react-aria-components';
 import { labelPinAs, removePin } from '../../state/pin-actions';
 import { pinColour } from '../map/pin-styles';
 import side from '../shell/side-column.module.css';
-import { useRecipe, useWorkbench } from '../workbench-context';
+import { useRecipe, useView, useWorkbench } from '../workbench-context';
 import styles from './recipe-column.module.css';
 
 export function PinList(): React.JSX.Element {
   const workbench = useWorkbench();
+  const theme = useView((view) => view.theme);
   const pins = useRecipe((document) => document.pins) ?? [];
   return (
     <section aria-label="Pins">
@@ -24,7 +25,7 @@ export function PinList(): React.JSX.Element {
             onPointerEnter={() => workbench.crosshair.set({ y, x })}
             onPointerLeave={() => workbench.crosshair.set(null)}
           >
-            <b style={{ color: pinColour(name) }}>{name}</b>
+            <b style={{ color: pinColour(name, theme) }}>{name}</b>
             <TextField
               className={styles.pinLabel ?? ''}
               aria-label={`Label of pin ${name}`}

@@ -96,7 +96,10 @@ function tableFromText(textAt: (share: number) => string): Uint8Array {
   const table = new Uint8Array(3 * tableSize);
   for (let i = 0; i < tableSize; i++) {
     const text = textAt(i / (tableSize - 1));
-    table.set(isHexColour(text) ? parseHexColour(text) : (text.match(/\d+/g) ?? []).map(Number), 3 * i);
+    table.set(
+      isHexColour(text) ? parseHexColour(text) : (text.match(/\d+/g) ?? []).map(Number),
+      3 * i,
+    );
   }
   return table;
 }

@@ -33,7 +33,11 @@ export function encodedFromLinear(linear: number): number {
 
 /** Linear light of a colour given in bytes. */
 export function linearFromBytes([red, green, blue]: RgbBytes): LinearRgb {
-  return [linearFromEncoded(red / 255), linearFromEncoded(green / 255), linearFromEncoded(blue / 255)];
+  return [
+    linearFromEncoded(red / 255),
+    linearFromEncoded(green / 255),
+    linearFromEncoded(blue / 255),
+  ];
 }
 
 /** Bytes nearest to a linear colour; what lies outside the gamut is clipped channel by channel. */

@@ -55,7 +55,7 @@ function logarithmic(low: number, high: number): TransferCurve {
   const span = log(high) - logLow;
   const least = Math.min(low, high);
   return {
-    shareOf: (value) => clip((log(value <= least ? least : value) - logLow) / span),
+    shareOf: (value) => clip((log(Math.max(value, least)) - logLow) / span),
     valueAt: (share) => exp(logLow + share * span),
   };
 }
@@ -69,5 +69,5 @@ function stepAt(edge: number): TransferCurve {
 
 /** Into 0 to 1; NaN stays NaN. */
 function clip(share: number): number {
-  return share < 0 ? 0 : share > 1 ? 1 : share;
+  return share < 0 ? 0 : Math.min(share, 1);
 }

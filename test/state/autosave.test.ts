@@ -1,0 +1,98 @@
+import { describe, expect, it } from 'vitest';
+import { emptyRecipe } from '../../src/recipe/defaults';
+import { loadLastWork, loadRecipeFor, startAutosave } from '../../src/state/autosave';
+import { moveBandEnds } from '../../src/state/band-actions';
+import { offerEarlierRecipe } from '../../src/state/earlier-recipe';
+import { openLastWork } from '../../src/state/last-work';
+import { createWorkbench } from '../../src/state/workbench';
+import { createInProcessEngine } from '../../workers/in-process-engine';
+import { memoryStorage, openWorkbench, pause, twoBands } from './open-workbench';
+
+const now = () => new Date('2026-05-04T10:00:00Z');
+const written = () => pause(400);
+
+describe('the work of a visit', () => {
+  it('is written down after an edit, with the name and hash of its scan', async () => {
+    const storage = memoryStorage();
+    const { workbench } = await openWorkbench();
+    startAutosave(workbench, storage, now);
+    moveBandEnds(workbench, { name: 'low' }, { fromEv: 1.83, toEv: 1.87 });
+    await written();
+    const last = await loadLastWork(storage);
+    expect(last?.work).toMatchObject({ scanName: 'made.npz', savedAt: '2026-05-04T10:00:00.000Z' });
+    expect(last?.work.sha256).toMatch(/^[0-9a-f]{64}$/);
+    expect(last?.recipe).toEqual(workbench.recipe.getState().recipe);
+  });
+
+  it('opens again with the user’s own file, and the maps are the same', async () => {
+    const { workbench, made } = await openWorkbench();
+    const before = workbench.results.getState().maps.get('band.low.integral');
+    const again = createWorkbench(createInProcessEngine());
+    const { recipe } = workbench.recipe.getState();
+    expect(await openLastWork(again, made.inputs, recipe)).toBe(true);
+    while (!again.results.getState().maps.has('band.low.integral')) await pause();
+    expect(again.results.getState().maps.get('band.low.integral')?.values).toEqual(before?.values);
+    expect(again.recipe.getState().recipe).toEqual(recipe);
+  });
+
+  it('that can no longer be read is told of, and leaves the screen as it is', async () => {
+    const workbench = createWorkbench(createInProcessEngine());
+    const bytes = new TextEncoder().encode('no scan any more');
+    const inputs = { scan: { kind: 'memory' as const, name: 'gone.npy', bytes }, companions: [] };
+    expect(await openLastWork(workbench, inputs, emptyRecipe(''))).toBe(false);
+    expect(workbench.session.getState().scan).toBeNull();
+    expect(workbench.notices.getState().notices).toHaveLength(1);
+  });
+
+  it('is none where what was kept is damaged', async () => {
+    const storage = memoryStorage();
+    await storage.set('last-work', { scanName: 'x', recipeText: '{"recipe": 99}' });
+    expect(await loadLastWork(storage)).toBeNull();
+    await storage.set('last-work', 'nonsense');
+    expect(await loadLastWork(storage)).toBeNull();
+  });
+
+  it('is told once where the browser keeps nothing', async () => {
+    const { workbench } = await openWorkbench();
+    const refusing = {
+      get: async () => undefined,
+      set: async () => {
+        throw new Error('quota');
+      },
+    };
+    startAutosave(workbench, refusing, now);
+    for (const toEv of [1.87, 1.86]) {
+      moveBandEnds(workbench, { name: 'low' }, { fromEv: 1.83, toEv });
+      await written();
+    }
+    expect(workbench.notices.getState().notices.map(({ text }) => text)).toEqual([
+      'This browser does not keep the work for the next visit.',
+    ]);
+  });
+});
+
+describe('the recipe kept under a scan’s hash', () => {
+  it('is not overwritten by one nobody has touched, and is offered when the scan is opened', async () => {
+    const storage = memoryStorage();
+    const first = await openWorkbench();
+    startAutosave(first.workbench, storage, now);
+    moveBandEnds(first.workbench, { name: 'low' }, { fromEv: 1.83, toEv: 1.87 });
+    await written();
+    const { sha256 } = first.workbench.session.getState();
+    const edited = first.workbench.recipe.getState().recipe;
+
+    const second = createWorkbench(createInProcessEngine());
+    offerEarlierRecipe(second, storage);
+    startAutosave(second, storage, now);
+    await openLastWork(second, first.made.inputs, twoBands);
+    while (second.session.getState().sha256 === null) await pause();
+    await written();
+    expect((await loadRecipeFor(storage, sha256 ?? ''))?.recipe).toEqual(edited);
+    const [notice] = second.notices.getState().notices;
+    expect(notice?.text).toBe('made.npz was open before.');
+    notice?.action?.run();
+    expect(second.recipe.getState().recipe).toEqual(edited);
+    second.recipe.undo();
+    expect(second.recipe.getState().recipe).toEqual(twoBands);
+  });
+});

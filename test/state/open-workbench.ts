@@ -1,0 +1,87 @@
+/** A workbench with a small made scan open, on the real engine in one process. */
+import type { Recipe } from '../../src/recipe/schema';
+import { openOffered } from '../../src/state/scan-opening';
+import { createWorkbench, type Workbench } from '../../src/state/workbench';
+import type { BandRequest, ScanEngine } from '../../workers/engine';
+import { createInProcessEngine } from '../../workers/in-process-engine';
+import { type MadeOptions, type MadeScan, makeScan } from '../workers/made-scan';
+
+export interface OpenWorkbench {
+  readonly workbench: Workbench;
+  readonly made: MadeScan;
+  /** what was asked of the engine for bands, oldest first */
+  readonly asked: readonly BandRequest[];
+  /** waits until no band map is behind the recipe */
+  readonly settled: () => Promise<void>;
+}
+
+export const twoBands: Recipe = {
+  recipe: 1,
+  bands: [
+    { name: 'low', from: 1.82, to: 1.88, unit: 'eV' },
+    { name: 'high', from: 1.9, to: 1.95, unit: 'eV' },
+  ],
+  blend: {
+    mode: 'additive',
+    channels: [{ source: 'band.low.integral', colour: '#ff0000' }],
+  },
+};
+
+export async function openWorkbench(
+  recipe: Recipe | null = twoBands,
+  options: MadeOptions = {},
+): Promise<OpenWorkbench> {
+  const made = makeScan(options);
+  const asked: BandRequest[] = [];
+  const workbench = createWorkbench(listening(createInProcessEngine(), asked));
+  await openOffered(workbench, made.inputs, recipe, '/sample-data/made.npz');
+  const settled = async (): Promise<void> => {
+    do await pause();
+    while (workbench.results.getState().pending.size > 0);
+  };
+  await settled();
+  return { workbench, made, asked, settled };
+}
+
+/** The engine with an ear at its band maps; bound, since its parts know only themselves. */
+function listening(engine: ScanEngine, asked: BandRequest[]): ScanEngine {
+  return bound(engine, {
+    open: async (inputs, plan, options) => {
+      const scan = await engine.open(inputs, plan, options);
+      return bound(scan, {
+        bandMaps: (request, callOptions) => {
+          asked.push(request);
+          return scan.bandMaps(request, callOptions);
+        },
+      });
+    },
+  });
+}
+
+/** An object like another, with some methods in place of its own. */
+function bound<T extends object>(target: T, replaced: Partial<T>): T {
+  return new Proxy(target, {
+    get(_, key) {
+      const own = Reflect.get(replaced, key);
+      if (own !== undefined) return own;
+      const value: unknown = Reflect.get(target, key);
+      return typeof value === 'function' ? value.bind(target) : value;
+    },
+  });
+}
+
+export function pause(ms = 5): Promise<void> {
+  return new Promise((resolve) => setTimeout(resolve, ms));
+}
+
+/** Storage as the browser's, in memory. */
+export function memoryStorage() {
+  const kept = new Map<string, unknown>();
+  return {
+    kept,
+    get: async (key: string) => kept.get(key),
+    set: async (key: string, value: unknown) => {
+      kept.set(key, structuredClone(value));
+    },
+  };
+}

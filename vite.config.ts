@@ -93,7 +93,13 @@ export default defineConfig(({ mode }) => {
     base: './',
     worker: { format: 'es' as const },
     server: { headers: isolation },
-    build: { outDir: 'dist/app', target: 'es2022', emptyOutDir: true },
+    build: {
+      outDir: 'dist/app',
+      target: 'es2022',
+      emptyOutDir: true,
+      // The HDF5 library is one piece of 4.7 MB, fetched by workers when an HDF5 file is met.
+      chunkSizeWarningLimit: 5000,
+    },
     test: {
       environment: 'node',
       testTimeout: 60_000,

@@ -1,7 +1,8 @@
 /** A first look at a scan at bounded cost: totals of pixels evenly thinned, and their mean spectrum. */
 import { RimlightError, throwIfAborted } from '../errors';
 import type { CountsArray } from '../science/scan';
-import type { Container, ElementType, ReadOptions } from './container';
+import type { Container, ReadOptions } from './container';
+import { bytesOfType } from './dtype';
 import { type Block, blocksOf, regionOf } from './load-slab';
 import type { CubePlan, Preview, ScanPlan } from './scan-plan';
 
@@ -14,21 +15,6 @@ const previewBytes = 64 << 20;
  */
 const stackBytes = 512 << 20;
 const stackRows = 16;
-
-const bytesPerValue: Readonly<Record<ElementType, number>> = {
-  uint8: 1,
-  int8: 1,
-  bool: 1,
-  uint16: 2,
-  int16: 2,
-  float16: 2,
-  uint32: 4,
-  int32: 4,
-  float32: 4,
-  uint64: 8,
-  int64: 8,
-  float64: 8,
-};
 
 /** How pixels are thinned, and the blocks that hold them. */
 interface Thinning {
@@ -51,7 +37,7 @@ export async function previewScan(
 ): Promise<Preview> {
   const { cube, meta } = plan;
   const type = container.entries.find(({ path }) => path === cube.path)?.type ?? 'float64';
-  const { step, blocks } = thinningOf(plan, bytesPerValue[type]);
+  const { step, blocks } = thinningOf(plan, bytesOfType[type]);
   const ny = Math.ceil(meta.shape.ny / step);
   const nx = Math.ceil(meta.shape.nx / step);
   const sums = newSums(cube, { ny, nx, nk: meta.shape.nk }, step, meta.shape.nx);

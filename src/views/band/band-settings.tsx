@@ -5,7 +5,7 @@ import { bandQuantities } from '../../science/bands/band';
 import { deleteBand, setBandEnds, setBandName, setFloor } from '../../state/band-actions';
 import { bandColours } from '../../state/band-colours';
 import { showLeadMap } from '../../state/lead-actions';
-import { NumberEntry } from '../forms/number-entry';
+import { StatedNumber } from '../forms/stated-number';
 import side from '../shell/side-column.module.css';
 import { useRecipe, useView, useWorkbench } from '../workbench-context';
 import styles from './band-settings.module.css';
@@ -31,7 +31,6 @@ export function BandSettings({ name }: { readonly name: string }): React.JSX.Ele
   const band = recipe.bands?.find((candidate) => candidate.name === name);
   if (band === undefined) return <p className={side.hint}>Select a band on the spectrum.</p>;
   const unit = band.unit === 'cm-1' ? 'cm⁻¹' : band.unit;
-  const step = band.unit === 'eV' ? 0.001 : band.unit === 'meV' ? 1 : 0.5;
   return (
     <section className={styles.section} aria-label={`Settings of band ${name}`}>
       <h2 className={side.heading}>
@@ -49,18 +48,22 @@ export function BandSettings({ name }: { readonly name: string }): React.JSX.Ele
         <Label>name</Label>
         <Input />
       </TextField>
-      <NumberEntry
-        label={`from, ${unit}`}
-        value={band.from}
-        step={step}
-        onChange={(from) => setBandEnds(workbench, name, from, band.to)}
-      />
-      <NumberEntry
-        label={`to, ${unit}`}
-        value={band.to}
-        step={step}
-        onChange={(to) => setBandEnds(workbench, name, band.from, to)}
-      />
+      <div className={styles.ends}>
+        <StatedNumber
+          label={`from, ${unit}`}
+          isLabelShown
+          value={band.from}
+          rule="any"
+          onState={(from) => setBandEnds(workbench, name, from, band.to)}
+        />
+        <StatedNumber
+          label={`to, ${unit}`}
+          isLabelShown
+          value={band.to}
+          rule="any"
+          onState={(to) => setBandEnds(workbench, name, band.from, to)}
+        />
+      </div>
       <RadioGroup
         className={styles.radios ?? ''}
         value={band.floor ?? 'none'}

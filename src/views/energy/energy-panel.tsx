@@ -1,6 +1,7 @@
 /** The spine of the screen: the energy axis with its spectra, bands on it, and the maps that hang from them. */
 import { scaleLinear } from 'd3-scale';
-import { useEffect, useLayoutEffect, useMemo, useRef, useState } from 'react';
+import { useEffect, useMemo, useRef } from 'react';
+import { useSize } from '../map/use-size';
 import { useSession, useView, useWorkbench } from '../workbench-context';
 import { BandOverlay } from './band-overlay';
 import styles from './energy-panel.module.css';
@@ -11,19 +12,9 @@ import { SpectrumView } from './spectrum-view';
 export function EnergyPanel(): React.JSX.Element {
   const { view } = useWorkbench();
   const host = useRef<HTMLElement>(null);
-  const [size, setSize] = useState({ widthPx: 0, heightPx: 0 });
+  const { widthPx, heightPx } = useSize(host);
   const scan = useSession((session) => session.scan);
   const shown = useView((state) => state.energyRange);
-
-  useLayoutEffect(() => {
-    const element = host.current;
-    if (element === null) return;
-    const observer = new ResizeObserver(() => {
-      setSize({ widthPx: element.clientWidth, heightPx: element.clientHeight });
-    });
-    observer.observe(element);
-    return () => observer.disconnect();
-  }, []);
 
   const axis = scan?.open.plan.meta.axis ?? null;
   const whole = useMemo((): readonly [number, number] => {
@@ -31,7 +22,6 @@ export function EnergyPanel(): React.JSX.Element {
     return [axis.edgesEv[0] ?? 1, axis.edgesEv[axis.edgesEv.length - 1] ?? 2];
   }, [axis]);
   const [fromEv, toEv] = shown ?? whole;
-  const { widthPx, heightPx } = size;
   const evToX = useMemo(
     () =>
       scaleLinear(

@@ -1,8 +1,8 @@
 /** The ends of an evenly spaced axis, where the file has none. */
 import { useState } from 'react';
 import { Choice } from '../forms/choice';
+import { StatedNumber } from '../forms/stated-number';
 import styles from './import-sheet.module.css';
-import { StatedNumber } from './stated-number';
 import { type StatedProps, unitGroups } from './stated-numbers';
 
 const axisKinds = unitGroups([

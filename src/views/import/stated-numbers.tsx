@@ -3,9 +3,9 @@ import { useState } from 'react';
 import type { ScanChoices } from '../../io/scan-choices';
 import type { ScanShape } from '../../science/scan';
 import { Choice, type ChoiceItems } from '../forms/choice';
+import { StatedNumber } from '../forms/stated-number';
 import styles from './import-sheet.module.css';
 import { shownPitch } from './shown-pitch';
-import { StatedNumber } from './stated-number';
 
 export interface StatedProps {
   /** what the user has stated */

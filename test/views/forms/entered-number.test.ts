@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { enteredNumber } from '../../../src/views/import/entered-number';
+import { enteredNumber } from '../../../src/views/forms/entered-number';
 
 describe('a number typed on the import sheet', () => {
   it.each([

@@ -1,9 +1,13 @@
 /** Files dropped anywhere on the page are opened; while they hover, the page says so. */
 import { useEffect, useRef, useState } from 'react';
+import { useSession, useWorkbench } from '../workbench-context';
+import { dropInWords } from './drop-words';
 import styles from './drop-zone.module.css';
 
 export function DropZone({ onFiles }: { readonly onFiles: (files: readonly File[]) => void }) {
   const [isOver, setOver] = useState(false);
+  const { notices } = useWorkbench();
+  const opening = useSession(({ draft }) => draft?.inputs.scan.name ?? null);
   const latest = useRef(onFiles);
   useEffect(() => {
     latest.current = onFiles;
@@ -30,6 +34,10 @@ export function DropZone({ onFiles }: { readonly onFiles: (files: readonly File[
       event.preventDefault();
       depth = 0;
       setOver(false);
+      if (hasFolder(event.dataTransfer)) {
+        notices.say('error', 'A folder was dropped', { hint: 'Drop the files that are in it.' });
+        return;
+      }
       const files = [...(event.dataTransfer?.files ?? [])];
       if (files.length > 0) latest.current(files);
     };
@@ -43,11 +51,16 @@ export function DropZone({ onFiles }: { readonly onFiles: (files: readonly File[
     return () => {
       for (const [type, listener] of listeners) window.removeEventListener(type, listener);
     };
-  }, []);
+  }, [notices]);
   if (!isOver) return null;
   return (
     <div className={styles.zone}>
-      <p>Drop a scan, with its height map or axis, or a recipe. Nothing leaves this machine.</p>
+      <p>{dropInWords(opening)}</p>
     </div>
   );
+}
+
+/** A folder comes as a file that cannot be read. */
+function hasFolder(transfer: DataTransfer | null): boolean {
+  return [...(transfer?.items ?? [])].some((item) => item.webkitGetAsEntry()?.isDirectory === true);
 }

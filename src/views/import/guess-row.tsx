@@ -1,5 +1,5 @@
 /** One guess of the import sheet: what it is, what else it could be, and why. */
-import { useMemo } from 'react';
+import { useId, useMemo } from 'react';
 import type { ScanChoices } from '../../io/scan-choices';
 import type { Guess } from '../../io/scan-plan';
 import { Choice } from '../forms/choice';
@@ -31,13 +31,18 @@ export function GuessRow(props: Props): React.JSX.Element {
     ],
     [label, alternatives],
   );
+  const why = useId();
   return (
-    <div
+    <fieldset
+      aria-label={fieldWords[field]}
+      aria-describedby={why}
       className={`${styles.row} ${source === 'missing' ? styles.missing : ''}`}
       data-field={field}
       data-missing={source === 'missing' || undefined}
     >
-      <span className={styles.field}>{fieldWords[field]}</span>
+      <span className={styles.field} aria-hidden="true">
+        {fieldWords[field]}
+      </span>
       <div className={styles.value}>
         {hasLabel && <span className={styles.plain}>{label}</span>}
         {alternatives.length > 0 && (
@@ -52,8 +57,8 @@ export function GuessRow(props: Props): React.JSX.Element {
           />
         )}
         {children}
-        <small>{evidenceInWords(guess)}</small>
+        <small id={why}>{evidenceInWords(guess)}</small>
       </div>
-    </div>
+    </fieldset>
   );
 }

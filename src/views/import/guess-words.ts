@@ -42,6 +42,14 @@ export function hindranceInWords(inspection: Inspection | null): string {
   return `Needed: ${missing.map((field) => fieldWords[field].toLowerCase()).join(', ')}`;
 }
 
+/** What the user can do about what is needed; "" where no field of the sheet asks for it. */
+export function answerInWords(missing: readonly GuessField[]): string {
+  if (missing.length === 0) return '';
+  return missing.includes('axis')
+    ? 'State it here, or add a file that holds it.'
+    : 'State it here.';
+}
+
 /** A sentence begins with a capital, but a file's name or path is left as it is. */
 export function capitalised(text: string): string {
   const [word = ''] = text.split(' ', 1);

@@ -7,7 +7,7 @@ import type { ImportDraft } from '../../state/session-store';
 import { useSession, useWorkbench } from '../workbench-context';
 import { CompanionFiles } from './companion-files';
 import { GuessList } from './guess-list';
-import { capitalised, hindranceInWords } from './guess-words';
+import { answerInWords, capitalised, hindranceInWords } from './guess-words';
 import styles from './import-sheet.module.css';
 import { PreviewView } from './preview-view';
 import { shownGuesses } from './shown-guesses';
@@ -94,12 +94,12 @@ function useFocusOfNeed(inspection: ImportDraft['inspection']) {
 /** What is in the way, and what else the user should know. */
 function Sayings({ draft }: { readonly draft: ImportDraft }): React.JSX.Element {
   const { inspection } = draft;
-  const isAsked = shownGuesses(inspection).missing.length > 0;
+  const answer = answerInWords(shownGuesses(inspection).missing);
   return (
     <>
       {inspection?.problems.map(({ what, hint }) => (
         <p key={what} className={styles.problem} role="alert">
-          {capitalised(what)}. <span>{isAsked ? 'State it here.' : hint}</span>
+          {capitalised(what)}. <span>{answer === '' ? hint : answer}</span>
         </p>
       ))}
       {inspection?.warnings.map((warning) => (

@@ -13,6 +13,7 @@ export type KeyAction =
   | 'logCounts'
   | 'wholeAxis'
   | 'theme'
+  | 'letGo'
   | 'keys';
 
 export type KeyGroup = 'Document' | 'Maps' | 'Spectrum' | 'Screen';
@@ -59,7 +60,15 @@ export const keyBindings: readonly KeyBinding[] = [
   plain('l', 'logCounts', 'Counts on a logarithmic scale', 'Spectrum'),
   plain('e', 'wholeAxis', 'The whole energy axis', 'Spectrum'),
   plain('delete', 'deleteBand', 'Delete the selected band', 'Spectrum'),
+  // What is called Delete on keyboards that have no other.
+  plain('backspace', 'deleteBand', 'Delete the selected band', 'Spectrum'),
   plain('t', 'theme', 'Dark or light', 'Screen'),
+  plain(
+    'escape',
+    'letGo',
+    'Close a sheet; let go of the selected band and the crosshair',
+    'Screen',
+  ),
   plain('?', 'keys', 'This sheet', 'Screen'),
 ];
 
@@ -74,13 +83,17 @@ export const keysInPlace: readonly {
     words: 'On a map: move the crosshair by a pixel; with Shift by ten',
     group: 'Maps',
   },
-  { keys: 'Enter', words: 'On a map: pin the pixel under the crosshair', group: 'Maps' },
+  {
+    keys: 'Enter',
+    words: 'On a map: pin the pixel under the crosshair, or let go of it',
+    group: 'Maps',
+  },
+  { keys: '+ −', words: 'On a map: closer, or farther away', group: 'Maps' },
   {
     keys: '← →',
     words: 'On a band or its end: move it; with Shift ten times as far',
     group: 'Spectrum',
   },
-  { keys: 'Esc', words: 'Close a sheet', group: 'Screen' },
 ];
 
 /** The part of a keyboard event that decides. */
@@ -107,11 +120,17 @@ export function actionOf(press: KeyPress): KeyAction | null {
   return found?.action ?? null;
 }
 
+/** The key that is held with letters: Cmd on a Mac, Ctrl elsewhere. Both work everywhere. */
+export type HeldKey = 'Ctrl' | 'Cmd';
+
 /** "Ctrl+Shift+Z", "P", "Delete" */
-export function keyInWords({ key, withControl, withShift }: KeyBinding): string {
-  const name =
-    key.length === 1 ? key.toUpperCase() : key.replace(/^./, (first) => first.toUpperCase());
-  return [withControl ? 'Ctrl' : '', withShift ? 'Shift' : '', name]
+export function keyInWords({ key, withControl, withShift }: KeyBinding, held: HeldKey): string {
+  const name = key === 'escape' ? 'Esc' : key.length === 1 ? key.toUpperCase() : capitalised(key);
+  return [withControl ? held : '', withShift ? 'Shift' : '', name]
     .filter((part) => part !== '')
     .join('+');
+}
+
+function capitalised(word: string): string {
+  return word.replace(/^./, (first) => first.toUpperCase());
 }

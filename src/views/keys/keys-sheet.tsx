@@ -1,7 +1,7 @@
 /** The sheet of all keys; it can be printed. */
 import { X } from 'lucide-react';
 import { Button, Dialog, Heading, Modal, ModalOverlay } from 'react-aria-components';
-import { type KeyGroup, keyBindings, keyInWords, keysInPlace } from './key-bindings';
+import { heldKeyOn, keyLines } from './key-lines';
 import styles from './keys-sheet.module.css';
 
 interface Props {
@@ -9,13 +9,7 @@ interface Props {
   readonly onClose: () => void;
 }
 
-const groups: readonly KeyGroup[] = ['Document', 'Maps', 'Spectrum', 'Screen'];
-
 export function KeysSheet({ isOpen, onClose }: Props): React.JSX.Element {
-  const lines = [
-    ...keyBindings.map((binding) => ({ ...binding, keys: keyInWords(binding) })),
-    ...keysInPlace,
-  ];
   return (
     <ModalOverlay
       className={styles.overlay ?? ''}
@@ -35,20 +29,20 @@ export function KeysSheet({ isOpen, onClose }: Props): React.JSX.Element {
             </Button>
           </header>
           <div className={styles.groups}>
-            {groups.map((group) => (
+            {keyLines(heldKeyOn(navigator.platform)).map(({ group, lines }) => (
               <section key={group}>
                 <h3>{group}</h3>
                 <dl>
-                  {lines
-                    .filter((line) => line.group === group)
-                    .map(({ keys, words }) => (
-                      <div key={keys + words}>
-                        <dt>
-                          <kbd>{keys}</kbd>
-                        </dt>
-                        <dd>{words}</dd>
-                      </div>
-                    ))}
+                  {lines.map(({ keys, words }) => (
+                    <div key={words}>
+                      <dt>
+                        {keys.map((key) => (
+                          <kbd key={key}>{key}</kbd>
+                        ))}
+                      </dt>
+                      <dd>{words}</dd>
+                    </div>
+                  ))}
                 </dl>
               </section>
             ))}

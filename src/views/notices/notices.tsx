@@ -10,10 +10,27 @@ import styles from './notices.module.css';
 export function Notices(): React.JSX.Element {
   const { notices } = useWorkbench();
   const shown = useStore(notices, (state) => state.notices);
+  // Where the focus was before it came here: it goes back, or Esc would no longer reach an open sheet.
+  const cameFrom = useRef<HTMLElement | null>(null);
+  const dismiss = (id: number): void => {
+    notices.dismiss(id);
+    if (cameFrom.current?.isConnected === true) cameFrom.current.focus();
+    cameFrom.current = null;
+  };
   return (
-    <section className={styles.notices} aria-label="Messages" aria-live="polite">
+    // Heard and within reach also while a sheet is open: its library hides everything else of the page.
+    <section
+      className={styles.notices}
+      aria-label="Messages"
+      aria-live="polite"
+      data-react-aria-top-layer="true"
+      onFocus={({ currentTarget, relatedTarget }) => {
+        if (currentTarget.contains(relatedTarget)) return;
+        cameFrom.current = relatedTarget instanceof HTMLElement ? relatedTarget : null;
+      }}
+    >
       {shown.map((notice) => (
-        <OneNotice key={notice.id} notice={notice} onDismiss={() => notices.dismiss(notice.id)} />
+        <OneNotice key={notice.id} notice={notice} onDismiss={() => dismiss(notice.id)} />
       ))}
     </section>
   );
@@ -46,7 +63,7 @@ function OneNotice({ notice, onDismiss }: Props): React.JSX.Element {
       ref={box}
     >
       <p>
-        {text}
+        {hint === '' ? text : asSentence(text)}
         {hint !== '' && <span> {hint}</span>}
       </p>
       {action !== null && (
@@ -65,4 +82,9 @@ function OneNotice({ notice, onDismiss }: Props): React.JSX.Element {
       </Button>
     </div>
   );
+}
+
+/** What is followed by a hint ends before it. */
+function asSentence(text: string): string {
+  return /[.!?…]$/.test(text) ? text : `${text}.`;
 }

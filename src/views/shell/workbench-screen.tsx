@@ -3,7 +3,7 @@ import { useState } from 'react';
 import { deleteBand } from '../../state/band-actions';
 import { stepLeadMap } from '../../state/lead-actions';
 import { openFiles } from '../../state/opened-files';
-import { addPinAt } from '../../state/pin-actions';
+import { togglePinAt } from '../../state/pin-actions';
 import { recipeFile } from '../../state/recipe-files';
 import { BlendPane } from '../blend/blend-pane';
 import { sharedCamera } from '../canvas/shared-camera';
@@ -12,6 +12,7 @@ import { useFilePicker } from '../drop/use-file-picker';
 import { EnergyPanel } from '../energy/energy-panel';
 import { ImportSheet } from '../import/import-sheet';
 import { KeysSheet } from '../keys/keys-sheet';
+import { letGo } from '../keys/let-go';
 import { useKeys } from '../keys/use-keys';
 import { LeadPane } from '../lead/lead-pane';
 import { Notices } from '../notices/notices';
@@ -39,7 +40,7 @@ export function WorkbenchScreen(): React.JSX.Element {
     redo: recipe.redo,
     pin: () => {
       const pixel = crosshair.get();
-      if (pixel !== null) addPinAt(workbench, pixel);
+      if (pixel !== null) togglePinAt(workbench, pixel);
     },
     deleteBand: () => {
       const { selection } = view.getState();
@@ -51,6 +52,7 @@ export function WorkbenchScreen(): React.JSX.Element {
     logCounts: () => view.setState(({ logCounts }) => ({ logCounts: !logCounts })),
     wholeAxis: () => view.setState({ energyRange: null }),
     theme: () => view.setState(({ theme }) => ({ theme: theme === 'dark' ? 'light' : 'dark' })),
+    letGo: () => letGo(workbench),
     keys: () => setKeysShown(true),
   };
   useKeys(actions);

@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { RimlightError } from '../../../src/errors';
 import type { Guess, GuessField, Inspection } from '../../../src/io/scan-plan';
 import {
+  answerInWords,
   capitalised,
   evidenceInWords,
   hindranceInWords,
@@ -63,6 +64,12 @@ describe('the rows of the import sheet', () => {
 });
 
 describe('the words of the import sheet', () => {
+  it('can be answered on the sheet, an axis also by a file', () => {
+    expect(answerInWords(['laser'])).toBe('State it here.');
+    expect(answerInWords(['axis', 'laser'])).toContain('file');
+    expect(answerInWords([])).toBe('');
+  });
+
   it('say where a guess comes from, but not twice', () => {
     expect(evidenceInWords(guess('axis', 'guess'))).toBe('guessed: its name');
     const stated = { ...guess('axis', 'stated'), evidence: 'stated by the recipe' };

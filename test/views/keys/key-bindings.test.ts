@@ -1,6 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import {
   actionOf,
+  type HeldKey,
+  type KeyAction,
   type KeyPress,
   keyBindings,
   keyInWords,
@@ -26,6 +28,8 @@ describe('a key press', () => {
     ['l', 'logCounts'],
     ['e', 'wholeAxis'],
     ['t', 'theme'],
+    ['Backspace', 'deleteBand'],
+    ['Escape', 'letGo'],
   ])('%s asks for %s', (key, action) => {
     expect(actionOf(press(key))).toBe(action);
   });
@@ -57,16 +61,26 @@ describe('a key press', () => {
 });
 
 describe('the table of keys', () => {
+  const written = keyBindings.map((binding) => keyInWords(binding, 'Ctrl'));
+
   it('gives no key two meanings', () => {
-    const written = keyBindings.map(keyInWords);
     expect(new Set(written).size).toBe(written.length);
   });
 
+  it('finds each of its own keys again', () => {
+    for (const { key, withControl, withShift, action } of keyBindings) {
+      expect(actionOf(press(key, { ctrlKey: withControl, shiftKey: withShift }))).toBe(action);
+    }
+  });
+
   it('writes keys as they are printed on them', () => {
-    const redo = keyBindings.filter(({ action }) => action === 'redo').map(keyInWords);
-    expect(redo).toEqual(['Ctrl+Shift+Z', 'Ctrl+Y']);
-    expect(keyBindings.filter(({ action }) => action === 'deleteBand').map(keyInWords)).toEqual([
-      'Delete',
-    ]);
+    const keysOf = (wanted: KeyAction, held: HeldKey): readonly string[] =>
+      keyBindings
+        .filter(({ action }) => action === wanted)
+        .map((binding) => keyInWords(binding, held));
+    expect(keysOf('redo', 'Ctrl')).toEqual(['Ctrl+Shift+Z', 'Ctrl+Y']);
+    expect(keysOf('save', 'Cmd')).toEqual(['Cmd+S']);
+    expect(keysOf('deleteBand', 'Ctrl')).toEqual(['Delete', 'Backspace']);
+    expect(keysOf('letGo', 'Ctrl')).toEqual(['Esc']);
   });
 });

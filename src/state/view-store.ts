@@ -7,7 +7,9 @@ export type Theme = 'dark' | 'light';
 export type Selection =
   | { readonly kind: 'lead' }
   | { readonly kind: 'blend' }
-  | { readonly kind: 'band'; readonly name: string };
+  | { readonly kind: 'band'; readonly name: string }
+  | { readonly kind: 'model' }
+  | { readonly kind: 'component'; readonly name: string };
 
 /** A limit of a colour scale: "p2" (percentile of the map) or a number in the map's unit. */
 export type Limit = number | `p${number}`;

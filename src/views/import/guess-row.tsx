@@ -3,7 +3,7 @@ import { useId, useMemo } from 'react';
 import type { ScanChoices } from '../../io/scan-choices';
 import type { Guess } from '../../io/scan-plan';
 import { Choice } from '../forms/choice';
-import { evidenceInWords, fieldWords } from './guess-words';
+import { alternativeInWords, evidenceInWords, fieldWords } from './guess-words';
 import styles from './import-sheet.module.css';
 
 interface Props {
@@ -25,7 +25,10 @@ export function GuessRow(props: Props): React.JSX.Element {
         title: '',
         items: [
           { id: asItIs, words: label },
-          ...alternatives.map((other, index) => ({ id: String(index), words: other.label })),
+          ...alternatives.map((other, index) => ({
+            id: String(index),
+            words: alternativeInWords(other),
+          })),
         ],
       },
     ],

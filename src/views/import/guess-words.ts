@@ -1,5 +1,5 @@
 /** The words of the import sheet: what each guess is about, where it comes from, what is still needed. */
-import type { Guess, GuessField, Inspection } from '../../io/scan-plan';
+import type { Alternative, Guess, GuessField, Inspection } from '../../io/scan-plan';
 import { shownGuesses } from './shown-guesses';
 
 export const fieldWords: Readonly<Record<GuessField, string>> = {
@@ -32,6 +32,11 @@ export const sourceWords: Readonly<Record<Guess['source'], string>> = {
 export function evidenceInWords({ source, evidence }: Guess): string {
   if (source === 'stated') return evidence.replace(/^stated by the recipe/, 'as stated');
   return `${sourceWords[source]}: ${evidence}`;
+}
+
+/** "xyk: rows and columns exchanged" */
+export function alternativeInWords({ label, evidence }: Alternative): string {
+  return evidence === '' ? label : `${label}: ${evidence}`;
 }
 
 /** Why a scan cannot be opened yet: "Needed: spectral axis, laser"; "" when it can. */

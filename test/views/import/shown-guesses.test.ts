@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { RimlightError } from '../../../src/errors';
 import type { Guess, GuessField, Inspection } from '../../../src/io/scan-plan';
 import {
+  alternativeInWords,
   answerInWords,
   capitalised,
   evidenceInWords,
@@ -74,6 +75,12 @@ describe('the words of the import sheet', () => {
     expect(evidenceInWords(guess('axis', 'guess'))).toBe('guessed: its name');
     const stated = { ...guess('axis', 'stated'), evidence: 'stated by the recipe' };
     expect(evidenceInWords(stated)).toBe('as stated');
+  });
+
+  it('say of what it could be instead why, or what that would change', () => {
+    const other = { label: 'xyk', evidence: 'rows and columns exchanged', choice: {} };
+    expect(alternativeInWords(other)).toBe('xyk: rows and columns exchanged');
+    expect(alternativeInWords({ ...other, evidence: '' })).toBe('xyk');
   });
 
   it('begin with a capital, but for the name of a file', () => {

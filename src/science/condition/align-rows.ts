@@ -1,0 +1,269 @@
+/**
+ * Rows moved sideways by parts of a pixel so that neighbours match: how far each lies off, from its total
+ * counts against those of the row before.
+ */
+import { medianInPlace } from '../numeric/select';
+import { type ConditionedArray, type ConditionedSlab, zerosLike } from './conditioned';
+import { type StepPlace, stepError } from './step-errors';
+
+export interface RowShifts {
+  /** (ny) pixels each row's content lies to the right of where it belongs; it is moved left by that */
+  readonly shiftsPx: Float64Array;
+  /** odd rows against even rows, pixels: what a scan in serpentines leaves */
+  readonly serpentinePx: number;
+  /** rows that do not resemble the one before enough to tell: taken to lie as that one does */
+  readonly unsureRows: number;
+  /** rows whose shift was cut to the greatest allowed */
+  readonly limitedRows: number;
+}
+
+/** A correlation of unlike rows of n pixels scatters by 1/√n; it must exceed this many times that. */
+const leastCorrelation = 4;
+/** Fewer pixels tell nothing. */
+const fewestPixels = 8;
+
+/** (ny × nx) counts of each pixel, no data left out; NaN where all is missing. */
+export function rowProfiles({ counts, shape }: ConditionedSlab): Float64Array {
+  const { ny, nx, nk } = shape;
+  const totals = new Float64Array(ny * nx);
+  for (let pixel = 0; pixel < totals.length; pixel++) {
+    let sum = 0;
+    let found = 0;
+    for (let k = 0; k < nk; k++) {
+      const value = counts[pixel * nk + k];
+      if (Number.isNaN(value)) continue;
+      sum += value;
+      found++;
+    }
+    totals[pixel] = found > 0 ? sum : Number.NaN;
+  }
+  return totals;
+}
+
+/**
+ * Shifts of all rows from their profiles.
+ *
+ * Each row against the one before: the highest normalised cross-correlation over lags of up to twice
+ * the greatest shift, between pixels by a parabola. The part that turns its sign from row to row (its
+ * median) is the serpentine's. The rest adds up from row to row; a straight line over all rows is taken
+ * out of it, for a steady slant may well be the sample's. A drift that bends cannot be told from a
+ * sample that does.
+ *
+ * @param profiles - (ny × nx) of the whole scan
+ * @throws RimlightError 'recipe' - for a greatest shift that is not above 0 or not below a quarter of the row
+ */
+export function findRowShifts(
+  profiles: Float64Array,
+  { ny, nx }: { readonly ny: number; readonly nx: number },
+  maxShiftPx: number,
+  place: StepPlace,
+): RowShifts {
+  assertShift(maxShiftPx, nx, place);
+  const steps = new Float64Array(ny);
+  let unsureRows = 0;
+  for (let y = 1; y < ny; y++) {
+    const row = profiles.subarray(y * nx, (y + 1) * nx);
+    const before = profiles.subarray((y - 1) * nx, y * nx);
+    const lag = bestLag(before, row, Math.ceil(2 * maxShiftPx));
+    if (Number.isNaN(lag)) unsureRows++;
+    steps[y] = lag;
+  }
+  const serpentinePx = alternation(steps);
+  const shiftsPx = withoutLine(runningSum(steps, serpentinePx));
+  let limitedRows = 0;
+  for (let y = 0; y < ny; y++) {
+    const shift = shiftsPx[y] + (y % 2 === 1 ? serpentinePx / 2 : -serpentinePx / 2);
+    shiftsPx[y] = Math.min(Math.max(shift, -maxShiftPx), maxShiftPx);
+    if (shift !== shiftsPx[y]) limitedRows++;
+  }
+  return { shiftsPx, serpentinePx, unsureRows, limitedRows };
+}
+
+/**
+ * Rows moved left by their shifts, straight lines between pixels; counts, variances and background with
+ * the same weights (of variances: squared). What comes from more than half a pixel outside has no data.
+ * Neighbouring pixels share noise afterwards.
+ *
+ * @param shiftsPx - of the whole scan
+ */
+export function moveRows(slab: ConditionedSlab, shiftsPx: Float64Array): ConditionedSlab {
+  const move = (
+    array: ConditionedArray,
+    weigh: (weight: number) => number = (weight) => weight,
+  ): ConditionedArray => moved(array, slab, shiftsPx, weigh);
+  const { background } = slab;
+  return {
+    ...slab,
+    counts: move(slab.counts),
+    variances: slab.variances === null ? null : move(slab.variances, (weight) => weight * weight),
+    background:
+      background.kind === 'channel'
+        ? background
+        : { kind: 'pixel', values: move(background.values) },
+    replaced: slab.replaced === null ? null : movedMarks(slab.replaced, slab, shiftsPx),
+    isIndependent: false,
+  };
+}
+
+function assertShift(maxShiftPx: number, nx: number, place: StepPlace): void {
+  if (nx < fewestPixels) {
+    throw stepError(
+      place,
+      `rows of ${nx} pixels are too short to be aligned`,
+      `Switch the step off; it needs ${fewestPixels} columns.`,
+    );
+  }
+  if (maxShiftPx > 0 && maxShiftPx <= nx / 4) return;
+  throw stepError(
+    place,
+    `rows of ${nx} pixels cannot be moved by up to ${maxShiftPx}`,
+    `Give a number above 0, up to ${nx / 4}.`,
+  );
+}
+
+/** How far `row` lies right of `before`; NaN where they are too unlike. */
+function bestLag(before: Float64Array, row: Float64Array, most: number): number {
+  const lags = Math.min(most, row.length - fewestPixels + 2);
+  const correlations = Array.from({ length: 2 * lags + 1 }, (_, i) =>
+    correlationAt(before, row, i - lags),
+  );
+  let best = 0;
+  for (let i = 1; i < correlations.length; i++) {
+    if (correlations[i] > correlations[best] || Number.isNaN(correlations[best])) best = i;
+  }
+  const noise = leastCorrelation / Math.sqrt(row.length - Math.abs(best - lags));
+  if (!(correlations[best] > Math.min(noise, 0.9))) return Number.NaN;
+  if (best === 0 || best === 2 * lags) return best - lags;
+  const left = correlations[best - 1];
+  const right = correlations[best + 1];
+  const curvature = left - 2 * correlations[best] + right;
+  const part = curvature < 0 ? (left - right) / (2 * curvature) : 0;
+  return best - lags + part;
+}
+
+/** Correlation of before[x] with row[x + lag] where they overlap, each less its mean there. */
+function correlationAt(before: Float64Array, row: Float64Array, lag: number): number {
+  const from = Math.max(0, -lag);
+  const to = Math.min(before.length, row.length - lag);
+  let n = 0;
+  let sumA = 0;
+  let sumB = 0;
+  for (let x = from; x < to; x++) {
+    if (Number.isNaN(before[x] + row[x + lag])) continue;
+    n++;
+    sumA += before[x];
+    sumB += row[x + lag];
+  }
+  let ab = 0;
+  let aa = 0;
+  let bb = 0;
+  for (let x = from; x < to; x++) {
+    const a = before[x] - sumA / n;
+    const b = row[x + lag] - sumB / n;
+    if (Number.isNaN(a + b)) continue;
+    ab += a * b;
+    aa += a * a;
+    bb += b * b;
+  }
+  return n >= fewestPixels / 2 && aa > 0 && bb > 0 ? ab / Math.sqrt(aa * bb) : Number.NaN;
+}
+
+/** Median of the steps, those onto even rows with their sign turned. */
+function alternation(steps: Float64Array): number {
+  const turned = steps.map((step, y) => (y % 2 === 1 ? step : -step)).subarray(1);
+  const known = turned.filter((step) => !Number.isNaN(step));
+  return known.length < 2 ? 0 : medianInPlace(known);
+}
+
+function runningSum(steps: Float64Array, serpentinePx: number): Float64Array {
+  const sums = new Float64Array(steps.length);
+  for (let y = 1; y < steps.length; y++) {
+    // Rows that could not be told have no step, and so stay where serpentine rows lie.
+    const own = Number.isNaN(steps[y])
+      ? 0
+      : steps[y] - (y % 2 === 1 ? serpentinePx : -serpentinePx);
+    sums[y] = sums[y - 1] + own;
+  }
+  return sums;
+}
+
+function withoutLine(values: Float64Array): Float64Array {
+  const n = values.length;
+  const middle = (n - 1) / 2;
+  let mean = 0;
+  let moment = 0;
+  let squares = 0;
+  for (let y = 0; y < n; y++) {
+    mean += values[y] / n;
+    moment += (y - middle) * values[y];
+    squares += (y - middle) * (y - middle);
+  }
+  const slope = n > 2 ? moment / squares : 0;
+  return values.map((value, y) => value - mean - slope * (y - middle));
+}
+
+/** The two pixels a place lies between, the share of the right one; null too far outside. */
+function between(
+  x: number,
+  shiftPx: number,
+  nx: number,
+): { readonly left: number; readonly right: number; readonly share: number } | null {
+  const from = x + shiftPx;
+  if (from < -0.5 || from > nx - 0.5) return null;
+  const inside = Math.min(Math.max(from, 0), nx - 1);
+  const left = Math.floor(inside);
+  return { left, right: Math.min(left + 1, nx - 1), share: inside - left };
+}
+
+function moved(
+  array: ConditionedArray,
+  { y0, shape }: ConditionedSlab,
+  shiftsPx: Float64Array,
+  weigh: (weight: number) => number,
+): ConditionedArray {
+  const { ny, nx, nk } = shape;
+  const out = zerosLike(array, array.length);
+  for (let pixel = 0; pixel < ny * nx; pixel++) {
+    const x = pixel % nx;
+    const row = pixel - x;
+    const place = between(x, shiftsPx[y0 + row / nx], nx);
+    const at = pixel * nk;
+    if (place === null) {
+      out.fill(Number.NaN, at, at + nk);
+      continue;
+    }
+    const left = (row + place.left) * nk;
+    if (place.share === 0) {
+      out.set(array.subarray(left, left + nk), at);
+      continue;
+    }
+    const right = (row + place.right) * nk;
+    const leftWeight = weigh(1 - place.share);
+    const rightWeight = weigh(place.share);
+    for (let k = 0; k < nk; k++) {
+      out[at + k] = leftWeight * array[left + k] + rightWeight * array[right + k];
+    }
+  }
+  return out;
+}
+
+function movedMarks(
+  marks: Uint8Array,
+  { y0, shape }: ConditionedSlab,
+  shiftsPx: Float64Array,
+): Uint8Array {
+  const { ny, nx, nk } = shape;
+  const out = new Uint8Array(marks.length);
+  for (let pixel = 0; pixel < ny * nx; pixel++) {
+    const x = pixel % nx;
+    const row = pixel - x;
+    const place = between(x, shiftsPx[y0 + row / nx], nx);
+    if (place === null) continue;
+    for (let k = 0; k < nk; k++) {
+      const left = marks[(row + place.left) * nk + k];
+      const right = place.share === 0 ? 0 : marks[(row + place.right) * nk + k];
+      out[pixel * nk + k] = left | right;
+    }
+  }
+  return out;
+}

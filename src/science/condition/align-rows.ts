@@ -19,6 +19,9 @@ export interface RowShifts {
 
 /** A correlation of unlike rows of n pixels scatters by 1/√n; it must exceed this many times that. */
 const leastCorrelation = 4;
+/** Rows on either side that a row is put in line with. */
+const wanderReach = 4;
+const refineRounds = 6;
 /** Fewer pixels tell nothing. */
 const fewestPixels = 8;
 
@@ -45,9 +48,11 @@ export function rowProfiles({ counts, shape }: ConditionedSlab): Float64Array {
  *
  * Each row against the one before: the highest normalised cross-correlation over lags of up to twice
  * the greatest shift, between pixels by a parabola. The part that turns its sign from row to row (its
- * median) is the serpentine's. The rest adds up from row to row; a straight line over all rows is taken
- * out of it, for a steady slant may well be the sample's. A drift that bends cannot be told from a
- * sample that does.
+ * median) is the serpentine's. The rest adds up from row to row, and what of it wanders slowly (its
+ * median over nine rows, fewer near the first and last row) is left where it is: it cannot be told from a
+ * slanted or curved sample. So jumping rows are put right, drift is not. Then, to shed what errors have
+ * added up, each row is put half the way towards where it best matches the mean of the two beside it, six
+ * times over: that evens out what changes from row to row and hardly moves what changes within ten.
  *
  * @param profiles - (ny × nx) of the whole scan
  * @throws RimlightError 'recipe' - for a greatest shift that is not above 0 or not below a quarter of the row
@@ -69,12 +74,13 @@ export function findRowShifts(
     steps[y] = lag;
   }
   const serpentinePx = alternation(steps);
-  const shiftsPx = withoutLine(runningSum(steps, serpentinePx));
+  const shiftsPx = withoutWander(runningSum(steps, serpentinePx));
+  for (let y = 0; y < ny; y++) shiftsPx[y] += y % 2 === 1 ? serpentinePx / 2 : -serpentinePx / 2;
+  for (let round = 0; round < refineRounds; round++) refine(profiles, nx, shiftsPx);
   let limitedRows = 0;
   for (let y = 0; y < ny; y++) {
-    const shift = shiftsPx[y] + (y % 2 === 1 ? serpentinePx / 2 : -serpentinePx / 2);
-    shiftsPx[y] = Math.min(Math.max(shift, -maxShiftPx), maxShiftPx);
-    if (shift !== shiftsPx[y]) limitedRows++;
+    if (Math.abs(shiftsPx[y]) > maxShiftPx) limitedRows++;
+    shiftsPx[y] = Math.min(Math.max(shiftsPx[y], -maxShiftPx), maxShiftPx);
   }
   return { shiftsPx, serpentinePx, unsureRows, limitedRows };
 }
@@ -187,19 +193,36 @@ function runningSum(steps: Float64Array, serpentinePx: number): Float64Array {
   return sums;
 }
 
-function withoutLine(values: Float64Array): Float64Array {
+/** Less the running median, over as many rows on either side as there are, 4 at most. */
+function withoutWander(values: Float64Array): Float64Array {
   const n = values.length;
-  const middle = (n - 1) / 2;
-  let mean = 0;
-  let moment = 0;
-  let squares = 0;
-  for (let y = 0; y < n; y++) {
-    mean += values[y] / n;
-    moment += (y - middle) * values[y];
-    squares += (y - middle) * (y - middle);
+  return values.map((value, y) => {
+    const reach = Math.min(wanderReach, y, n - 1 - y);
+    return value - medianInPlace(values.slice(y - reach, y + reach + 1));
+  });
+}
+
+/** Each row, moved as found so far, against the mean of those beside it; half of what is left is added. */
+function refine(profiles: Float64Array, nx: number, shiftsPx: Float64Array): void {
+  const ny = shiftsPx.length;
+  const rows = Array.from({ length: ny }, (_, y) =>
+    movedProfile(profiles.subarray(y * nx, (y + 1) * nx), shiftsPx[y]),
+  );
+  for (let y = 0; y < ny && ny > 1; y++) {
+    const above = rows[y > 0 ? y - 1 : 1];
+    const below = rows[y + 1 < ny ? y + 1 : ny - 2];
+    const beside = above.map((value, x) => (value + below[x]) / 2);
+    const lag = bestLag(beside, rows[y], 2);
+    if (!Number.isNaN(lag)) shiftsPx[y] += lag / 2;
   }
-  const slope = n > 2 ? moment / squares : 0;
-  return values.map((value, y) => value - mean - slope * (y - middle));
+}
+
+function movedProfile(profile: Float64Array, shiftPx: number): Float64Array {
+  return profile.map((_, x) => {
+    const place = between(x, shiftPx, profile.length);
+    if (place === null) return Number.NaN;
+    return (1 - place.share) * profile[place.left] + place.share * profile[place.right];
+  });
 }
 
 /** The two pixels a place lies between, the share of the right one; null too far outside. */

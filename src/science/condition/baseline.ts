@@ -38,10 +38,10 @@ export interface WithoutBaseline {
   readonly slab: ConditionedSlab;
   /** (ny, nx, nk), counts as they were */
   readonly baselines: ConditionedArray;
-  /** pixels whose rounds ran out */
-  readonly unsettledPixels: number;
-  /** pixels with too little data for a baseline: they are left without any */
-  readonly emptyPixels: number;
+  /** (ny × nx) the baseline's counts, all channels together */
+  readonly totals: Float64Array;
+  /** (ny × nx) 0: settled; 1: rounds ran out; 2: too little data, and no baseline */
+  readonly status: Float64Array;
 }
 
 /** @throws RimlightError 'recipe' - when settings are out of range or the windows hold too few channels */
@@ -92,22 +92,24 @@ export function subtractBaseline(slab: ConditionedSlab, finder: BaselineFinder):
   const baselines = zerosLike(slab.counts, slab.counts.length);
   const spectrum = new Float64Array(nk);
   const found = new Float64Array(nk);
-  let unsettledPixels = 0;
-  let emptyPixels = 0;
-  for (let at = 0; at < baselines.length; at += nk) {
+  const totals = new Float64Array(slab.counts.length / nk);
+  const status = new Float64Array(totals.length);
+  for (let pixel = 0; pixel < totals.length; pixel++) {
+    const at = pixel * nk;
     spectrum.set(slab.counts.subarray(at, at + nk));
     const isSettled = finder.find(spectrum, found);
     if (Number.isNaN(found[0])) {
-      emptyPixels++;
+      status[pixel] = 2;
       continue;
     }
     baselines.set(found, at);
-    if (!isSettled) unsettledPixels++;
+    for (let k = 0; k < nk; k++) totals[pixel] += found[k];
+    if (!isSettled) status[pixel] = 1;
   }
   return {
     slab: subtracted(slab, { kind: 'pixel', values: baselines }),
     baselines,
-    unsettledPixels,
-    emptyPixels,
+    totals,
+    status,
   };
 }

@@ -24,7 +24,10 @@ export interface RecordedReference {
   readonly name: string;
   /** (nk) for a spectrum, (ny, nx, nk) for a cube */
   readonly shape: readonly number[];
+  /** of a cube, the rows from `y0` on that were read, at least those that are asked for */
   readonly values: ArrayLike<number>;
+  /** 0 for a spectrum */
+  readonly y0: number;
 }
 
 /**

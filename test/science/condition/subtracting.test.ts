@@ -64,7 +64,7 @@ describe('an offset', () => {
 });
 
 describe('a file that is subtracted', () => {
-  const file = (...lengths: number[]) => ({ name: 'dark.npy', shape: lengths, values: [] });
+  const file = (...lengths: number[]) => ({ name: 'dark.npy', shape: lengths, values: [], y0: 0 });
   const grid = gridOf({ ny: 4, nx: 5, nk: 6 });
 
   it('is a spectrum or a cube of the scan', () => {

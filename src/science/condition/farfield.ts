@@ -33,14 +33,14 @@ export interface FarFieldScale {
 export function summariseWindow(
   slab: ConditionedSlab,
   outside: ReferenceRecording,
-  window: ChannelRange,
+  range: ChannelRange,
 ): readonly WindowSums[] {
   const { ny, nx } = slab.shape;
   const taken = takenAt(outside, slab);
   return Array.from({ length: ny }, (_, y) => {
     let sums = noSums;
     for (let x = 0; x < nx; x++) {
-      sums = addSums(sums, pixelSums(slab, taken, y * nx + x, window));
+      sums = addSums(sums, pixelSums(slab, taken, y * nx + x, range));
     }
     return sums;
   });
@@ -97,7 +97,7 @@ export interface FarFieldByPixel {
 export function subtractFarFieldByPixel(
   slab: ConditionedSlab,
   outside: ReferenceRecording,
-  window: ChannelRange,
+  range: ChannelRange,
 ): FarFieldByPixel {
   const { nk } = slab.shape;
   const taken = takenAt(outside, slab);
@@ -106,7 +106,7 @@ export function subtractFarFieldByPixel(
   const added = slab.variances === null ? null : zerosLike(slab.counts, slab.counts.length);
   const scales = new Float64Array(slab.counts.length / nk);
   for (let pixel = 0; pixel < scales.length; pixel++) {
-    const { scale, error } = scaleOf(pixelSums(slab, taken, pixel, window));
+    const { scale, error } = scaleOf(pixelSums(slab, taken, pixel, range));
     scales[pixel] = scale;
     for (let k = 0; k < nk; k++) {
       const value = taken.values.values[pixel * step + k];
@@ -130,14 +130,14 @@ export interface ContrastMap {
 export function nearFieldContrast(
   slab: ConditionedSlab,
   outside: ReferenceRecording,
-  window: ChannelRange,
+  range: ChannelRange,
 ): ContrastMap {
   const pixels = slab.shape.ny * slab.shape.nx;
   const taken = takenAt(outside, slab);
   const values = new Float64Array(pixels);
   const errors = slab.variances === null ? null : new Float64Array(pixels);
   for (let pixel = 0; pixel < pixels; pixel++) {
-    const sums = pixelSums(slab, taken, pixel, window);
+    const sums = pixelSums(slab, taken, pixel, range);
     const quotient = sums.outside > 0 ? sums.inside / sums.outside : Number.NaN;
     values[pixel] = quotient - 1;
     if (errors !== null) errors[pixel] = quotientError(sums, quotient);
@@ -170,12 +170,12 @@ function pixelSums(
   slab: ConditionedSlab,
   taken: ReturnType<typeof takenAt>,
   pixel: number,
-  window: ChannelRange,
+  range: ChannelRange,
 ): WindowSums {
   const { nk } = slab.shape;
   const step = taken.values.kind === 'channel' ? 0 : nk;
   let { inside, outside, insideVariance, outsideVariance } = noSums;
-  for (let k = window.first; k < window.end; k++) {
+  for (let k = range.first; k < range.end; k++) {
     const here = slab.counts[pixel * nk + k];
     const there = taken.values.values[pixel * step + k];
     if (Number.isNaN(here - there)) continue;

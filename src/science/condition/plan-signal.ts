@@ -46,12 +46,12 @@ export function planFarField(
       'Give two energies in eV as "window", or the scale as a number.',
     );
   }
-  const window = channelsWithin(grid.axis, step.window, place);
-  if (step.scale === 'fit-pixels') return farFieldByPixel(window, outside, grid, place);
+  const range = channelsWithin(grid.axis, step.window, place);
+  if (step.scale === 'fit-pixels') return farFieldByPixel(range, outside, grid, place);
   return planOf(place, grid, {
     reach: { kind: 'scan', rounds: 1 },
     summarise: (_, slab) => {
-      const rows = summariseWindow(slab, outside.at(spanOfSlab(slab)), window);
+      const rows = summariseWindow(slab, outside.at(spanOfSlab(slab)), range);
       return { kind: 'window', y0: slab.y0, rows };
     },
     merge: (_, summaries) => {
@@ -91,7 +91,7 @@ function farFieldOfScale(
 }
 
 function farFieldByPixel(
-  window: ChannelRange,
+  range: ChannelRange,
   outside: PlannedReference,
   grid: Grid,
   place: StepPlace,
@@ -99,7 +99,7 @@ function farFieldByPixel(
   return planOf(place, grid, {
     apply: (slab, rows) => {
       const own = rowsOf(slab, rows.y0, rows.y1);
-      const { slab: left, scales } = subtractFarFieldByPixel(own, outside.at(rows), window);
+      const { slab: left, scales } = subtractFarFieldByPixel(own, outside.at(rows), range);
       return {
         slab: left,
         tally: {

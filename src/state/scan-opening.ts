@@ -204,19 +204,30 @@ export async function openScan(workbench: Workbench, request: OpenRequest): Prom
   session.getState().running?.stop();
   const label = `Opening ${request.inputs.scan.name}`;
   const startedMs = performance.now();
+  const stop = (): void => stopper.abort();
+  let isOver = false;
   const report = (share: number): void => {
-    if (!stopper.signal.aborted) {
-      session.setState({ running: { label, share, startedMs, stop: () => stopper.abort() } });
-    }
+    if (stopper.signal.aborted || isOver) return;
+    session.setState({ running: { label, share, startedMs, stop } });
   };
   report(0);
+  let unplaced: OpenScan | null = null;
   try {
     const open = await engine.open(request.inputs, request.plan, {
       signal: stopper.signal,
       onProgress: report,
     });
+    unplaced = open;
+    isOver = true;
+    // Stopped as it was done: what stopped it goes first.
+    stopper.signal.throwIfAborted();
     const before = session.getState();
     const { overview } = open;
+    if (request.recipeFor !== null) {
+      recipe.reset(request.recipeFor(open));
+      view.setState({ energyRange: null });
+    }
+    // After the recipe: maps of the old scan that the new recipe asks for by the same names must not stay.
     results.clear();
     results.put([
       { name: 'scan.total', unit: overview.meta.quantity, ...overview.totals, errors: null },
@@ -224,22 +235,22 @@ export async function openScan(workbench: Workbench, request: OpenRequest): Prom
         ? []
         : [{ name: 'scan.height', unit: 'nm', ...overview.height, errors: null }]),
     ]);
-    if (request.recipeFor !== null) {
-      recipe.reset(request.recipeFor(open));
-      view.setState({ energyRange: null });
-    }
     session.setState({
       scan: { open, inputs: request.inputs, url: request.url },
       scanNumber: before.scanNumber + 1,
       sha256: null,
       running: null,
     });
+    unplaced = null;
     await before.scan?.open.release();
     void hashInBackground(workbench, request.inputs.scan);
     return true;
   } catch (error) {
-    session.setState({ running: null });
-    notices.sayError(error);
+    isOver = true;
+    await unplaced?.release();
+    // A later opening may be running by now; its progress is not this one's to end.
+    if (session.getState().running?.stop === stop) session.setState({ running: null });
+    if (!stopper.signal.aborted) notices.sayError(error);
     return false;
   }
 }

@@ -13,6 +13,8 @@ export interface OpenWorkbench {
   readonly asked: readonly BandRequest[];
   /** waits until no band map is behind the recipe */
   readonly settled: () => Promise<void>;
+  /** from now on the engine fails to make band maps */
+  readonly breakBands: (reason: string) => void;
 }
 
 export const twoBands: Recipe = {
@@ -33,24 +35,32 @@ export async function openWorkbench(
 ): Promise<OpenWorkbench> {
   const made = makeScan(options);
   const asked: BandRequest[] = [];
-  const workbench = createWorkbench(listening(createInProcessEngine(), asked));
+  let broken: string | null = null;
+  const heard = (request: BandRequest): void => {
+    asked.push(request);
+    if (broken !== null) throw new Error(broken);
+  };
+  const breakBands = (reason: string): void => {
+    broken = reason;
+  };
+  const workbench = createWorkbench(listening(createInProcessEngine(), heard));
   await openOffered(workbench, made.inputs, recipe, '/sample-data/made.npz');
   const settled = async (): Promise<void> => {
     do await pause();
     while (workbench.results.getState().pending.size > 0);
   };
   await settled();
-  return { workbench, made, asked, settled };
+  return { workbench, made, asked, settled, breakBands };
 }
 
 /** The engine with an ear at its band maps; bound, since its parts know only themselves. */
-function listening(engine: ScanEngine, asked: BandRequest[]): ScanEngine {
+function listening(engine: ScanEngine, heard: (request: BandRequest) => void): ScanEngine {
   return bound(engine, {
     open: async (inputs, plan, options) => {
       const scan = await engine.open(inputs, plan, options);
       return bound(scan, {
-        bandMaps: (request, callOptions) => {
-          asked.push(request);
+        bandMaps: async (request, callOptions) => {
+          heard(request);
           return scan.bandMaps(request, callOptions);
         },
       });

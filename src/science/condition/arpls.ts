@@ -1,5 +1,5 @@
 /** Asymmetrically reweighted penalised least squares: the noise below the baseline says what lies above it. */
-import { exp } from '../numeric/elementary';
+import { fallingStep } from '../numeric/logistic';
 import { PenalisedSmoother } from '../numeric/penalised-smoother';
 import { weighKnown } from './asls';
 import type { BaselineFinder } from './baseline';
@@ -8,8 +8,6 @@ import type { BaselineFinder } from './baseline';
 const settled = 1e-3;
 /** Residuals of this share of the counts are rounding: the curve then is the spectrum. */
 const rounding = 1e-9;
-/** Beyond this, 1/(1 + eˣ) is 0 or 1 to rounding that no weight shows. */
-const steepest = 37;
 
 /**
  * As asymmetric least squares, with weights w = 1/(1 + exp(2 (d − (2σ − m))/σ)) of the residuals d = y − z,
@@ -67,8 +65,7 @@ export class ArplsBaseline implements BaselineFinder {
       const before = weights[k];
       const rest = spectrum[k] - curve[k];
       if (Number.isNaN(rest)) continue;
-      const steep = (2 * (rest - centre)) / sigma;
-      const weight = steep > steepest ? 0 : steep < -steepest ? 1 : 1 / (1 + exp(steep));
+      const weight = fallingStep((2 * (rest - centre)) / sigma);
       change += (weight - before) * (weight - before);
       norm += before * before;
       weights[k] = weight;

@@ -64,19 +64,20 @@ export class PolynomialBaseline implements BaselineFinder {
     return this.#clip(basis, spectrum, out);
   }
 
-  #clip(first: PolynomialBasis, spectrum: Float64Array, out: Float64Array): boolean {
-    const { centresEv } = this.#axis;
+  #clip(basis: PolynomialBasis, spectrum: Float64Array, out: Float64Array): boolean {
     const weights = this.#weights;
     for (let k = 0; k < out.length; k++) weights[k] = Number.isNaN(spectrum[k]) ? 0 : 1;
     const least = rounding * rangeOf(spectrum);
-    let basis = first;
+    let coefficients = basis.coefficients(spectrum);
     for (let round = 0; round < mostRounds; round++) {
-      basis.fitted(basis.coefficients(spectrum), out);
+      basis.fitted(coefficients, out);
       const limit = Math.max(least, clipSigmas * madToSigma * this.#medianDeviation(spectrum, out));
       const { changed, kept } = this.#reweigh(spectrum, out, limit);
       if (changed === 0) return true;
       if (kept <= this.#degree + 1) return false;
-      basis = new PolynomialBasis(centresEv, this.#degree, weights);
+      const next = basis.partOf(spectrum, weights);
+      if (next === null) return false;
+      coefficients = next;
     }
     return false;
   }

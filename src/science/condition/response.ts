@@ -84,11 +84,13 @@ export function divideByResponse(slab: ConditionedSlab, response: Float64Array):
   const length = slab.counts.length;
   const counts = zerosLike(slab.counts, length);
   const variances = slab.variances === null ? null : zerosLike(slab.counts, length);
-  const squares = response.map((value) => value * value);
+  // Products take a quarter of the time of quotients, and are off by one rounding more.
+  const times = response.map((value) => 1 / value);
+  const squares = times.map((value) => value * value);
   for (let at = 0; at < length; at += nk) {
-    for (let k = 0; k < nk; k++) counts[at + k] = slab.counts[at + k] / response[k];
+    for (let k = 0; k < nk; k++) counts[at + k] = slab.counts[at + k] * times[k];
     if (variances === null || slab.variances === null) continue;
-    for (let k = 0; k < nk; k++) variances[at + k] = slab.variances[at + k] / squares[k];
+    for (let k = 0; k < nk; k++) variances[at + k] = slab.variances[at + k] * squares[k];
   }
   const factor = slab.factor.map((value, k) => value * response[k]);
   return { ...slab, counts, variances, factor };

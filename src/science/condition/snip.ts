@@ -15,7 +15,7 @@ import { type StepPlace, stepError } from './step-errors';
  */
 export class SnipBaseline implements BaselineFinder {
   readonly #halfWidth: number;
-  readonly #before: Float64Array;
+  readonly #spare: Float64Array;
 
   /** @throws RimlightError 'recipe' - when the width is no whole number of channels, or does not fit the spectrum */
   constructor(nk: number, halfWidth: number, place: StepPlace) {
@@ -27,7 +27,7 @@ export class SnipBaseline implements BaselineFinder {
       );
     }
     this.#halfWidth = halfWidth;
-    this.#before = new Float64Array(nk);
+    this.#spare = new Float64Array(nk);
   }
 
   find(spectrum: Float64Array, out: Float64Array): boolean {
@@ -37,18 +37,26 @@ export class SnipBaseline implements BaselineFinder {
     }
     const least = out.reduce((low, value) => Math.min(low, value), 0);
     for (let k = 0; k < out.length; k++) out[k] = log(log(out[k] - least + 1) + 1);
-    for (let width = this.#halfWidth; width >= 1; width--) this.#clip(out, width);
-    for (let k = 0; k < out.length; k++) out[k] = exp(exp(out[k]) - 1) - 1 + least;
+    let from = out;
+    let to = this.#spare;
+    for (let width = this.#halfWidth; width >= 1; width--) {
+      clip(from, to, width);
+      [from, to] = [to, from];
+    }
+    for (let k = 0; k < out.length; k++) out[k] = exp(exp(from[k]) - 1) - 1 + least;
     return true;
   }
+}
 
-  #clip(values: Float64Array, width: number): void {
-    const before = this.#before;
-    before.set(values);
-    for (let k = width; k < values.length - width; k++) {
-      const mean = (before[k - width] + before[k + width]) / 2;
-      if (mean < values[k]) values[k] = mean;
-    }
+function clip(from: Float64Array, to: Float64Array, width: number): void {
+  const end = from.length - width;
+  for (let k = 0; k < width; k++) {
+    to[k] = from[k];
+    to[end + k] = from[end + k];
+  }
+  for (let k = width; k < end; k++) {
+    const mean = (from[k - width] + from[k + width]) / 2;
+    to[k] = Math.min(mean, from[k]);
   }
 }
 

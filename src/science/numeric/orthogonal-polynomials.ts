@@ -81,6 +81,32 @@ export class PolynomialBasis {
     });
   }
 
+  /**
+   * Least squares over some of the points: coefficients in the same polynomials, which are no longer
+   * orthogonal there, by Cholesky's way.
+   *
+   * @param taken - one for each point, 1 takes it and 0 leaves it out (then y may be NaN)
+   * @returns null where the points taken do not fix the polynomial
+   */
+  partOf(y: Float64Array, taken: Float64Array): Float64Array | null {
+    const size = this.#values.length;
+    const matrix = new Float64Array(size * size);
+    const right = new Float64Array(size);
+    for (let j = 0; j < size; j++) {
+      const own = this.#values[j];
+      for (let i = 0; i <= j; i++) {
+        const other = this.#values[i];
+        let sum = 0;
+        for (let p = 0; p < own.length; p++) sum += taken[p] * own[p] * other[p];
+        matrix[j * size + i] = sum;
+      }
+      let sum = 0;
+      for (let p = 0; p < own.length; p++) if (taken[p] !== 0) sum += taken[p] * own[p] * y[p];
+      right[j] = sum;
+    }
+    return solvePositive(matrix, right);
+  }
+
   /** The polynomial on the points. */
   fitted(coefficients: Float64Array, out: Float64Array): Float64Array {
     out.fill(0);
@@ -124,4 +150,30 @@ export class PolynomialBasis {
     for (let i = 0; i < a.length; i++) sum += this.#weights[i] * a[i] * b[i];
     return sum;
   }
+}
+
+/** Pivots below this are rounding: the matrix has 1 at most on its diagonal. */
+const leastPivot = 1e-13;
+
+/** A x = b for a symmetric positive A, lower half given; both overwritten. Null where A is singular. */
+function solvePositive(a: Float64Array, b: Float64Array): Float64Array | null {
+  const n = b.length;
+  for (let j = 0; j < n; j++) {
+    for (let i = j; i < n; i++) {
+      let sum = a[i * n + j];
+      for (let k = 0; k < j; k++) sum -= a[i * n + k] * a[j * n + k];
+      if (i > j) a[i * n + j] = sum / a[j * n + j];
+      else if (!(sum > leastPivot)) return null;
+      else a[j * n + j] = Math.sqrt(sum);
+    }
+  }
+  for (let i = 0; i < n; i++) {
+    for (let k = 0; k < i; k++) b[i] -= a[i * n + k] * b[k];
+    b[i] /= a[i * n + i];
+  }
+  for (let i = n - 1; i >= 0; i--) {
+    for (let k = i + 1; k < n; k++) b[i] -= a[k * n + i] * b[k];
+    b[i] /= a[i * n + i];
+  }
+  return b;
 }

@@ -18,6 +18,7 @@ import { elementContexts } from '../../workers/element-context';
 import type { OpenScan } from '../../workers/engine';
 import { createMomentKernel } from '../../workers/kernel/moment-kernel';
 import { createNodeEngine } from '../../workers/node-engine';
+import { benchCondition } from './condition';
 import { median, ms, printTable, quantile, type Row, timesInTurn, timesOf, told } from './measure';
 import { plainTotals, servesPlainPass, startPlainThreads } from './plain-pass';
 import { cubeShape, syntheticCounts, wavelengths } from './synthetic-cube';
@@ -42,10 +43,12 @@ async function bench(): Promise<void> {
     const one = await benchPool(path, 1);
     const all = await benchPool(path, cores);
     const speedUp = one.bandMs / all.bandMs;
+    const conditioning = await benchCondition(counts);
     printTable([
       ...alone,
       ...all.rows,
       told(`new band, ${cores} workers against one`, `${speedUp.toFixed(2)} ×`),
+      ...conditioning,
     ]);
   } finally {
     rmSync(folder, { recursive: true, force: true });

@@ -10,7 +10,7 @@ import type { ResponseCurve } from './response';
 
 type Window = readonly [number, number];
 
-export type ChainStep = { /** keeps the step, and skips it */ readonly isOff: boolean } & (
+export type ActiveStep = { readonly isOff: false } & (
   | ({ readonly step: 'despike'; readonly method: 'spectral' | 'neighbour' } & DespikeOptions)
   | { readonly step: 'offset'; readonly dark: number | RecordedReference }
   | { readonly step: 'response'; readonly curve: ResponseCurve }
@@ -36,5 +36,13 @@ export type ChainStep = { /** keeps the step, and skips it */ readonly isOff: bo
   | ({ readonly step: 'bin' } & BinOptions)
 );
 
+/** Kept in the recipe and skipped: nothing of it is looked at. */
+export interface SkippedStep {
+  readonly isOff: true;
+  readonly step: ActiveStep['step'];
+}
+
+export type ChainStep = ActiveStep | SkippedStep;
+
 /** One kind of step. */
-export type StepOf<Name extends ChainStep['step']> = Extract<ChainStep, { readonly step: Name }>;
+export type StepOf<Name extends ActiveStep['step']> = Extract<ActiveStep, { readonly step: Name }>;

@@ -3,7 +3,7 @@
  * order to rows of the scan, shared out or not. Results do not depend on how rows are shared out.
  */
 import { assertUnreachable } from '../../errors';
-import type { ChainStep } from './chain-step';
+import type { ActiveStep, ChainStep } from './chain-step';
 import { type ConditionedSlab, type Grid, rowsOf } from './conditioned';
 import type { SpikeList } from './despike';
 import { planDespike } from './plan-despike';
@@ -56,7 +56,7 @@ interface Context {
   readonly place: StepPlace;
 }
 
-function planStep(step: ChainStep, grid: Grid, context: Context): StepBefore {
+function planStep(step: ActiveStep, grid: Grid, context: Context): StepBefore {
   const { place } = context;
   const plain = (planned: PlannedStep, spectrumWay: SpectrumWay | null = null): StepBefore => ({
     planned,

@@ -24,8 +24,7 @@ export function planCropStep(step: StepOf<'crop'>, grid: Grid, place: StepPlace)
     rowsFor: ({ y0, y1 }) => ({ y0: y0 + first, y1: y1 + first }),
     rowsAfter: (rows) => {
       const { y0, y1 } = sharedRows(rows, { y0: first, y1: end });
-      const from = Math.min(Math.max(y0 - first, 0), ny);
-      return { y0: from, y1: Math.max(from, y1 - first) };
+      return y1 > y0 ? { y0: y0 - first, y1: y1 - first } : { y0: 0, y1: 0 };
     },
     apply: (slab, { y0, y1 }) => {
       return onlySlab(cropSlab(rowsOf(slab, y0 + first, y1 + first), crop));

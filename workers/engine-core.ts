@@ -14,11 +14,13 @@ import { maskedRowSums } from '../src/science/bands/row-sums';
 import { SlabBands } from '../src/science/bands/slab-bands';
 import { prepareSlab, type SlabData } from '../src/science/bands/slab-data';
 import { pixelSpectrum, tilePixelsFor } from '../src/science/bands/tiled-counts';
+import type { FitPlan } from '../src/science/fit/fit-plan';
 import type { Slab } from '../src/science/scan';
 import { elementContexts } from './element-context';
 import type { Pixel, RowRange, SlabSummary, SourceHandle, WorkerEngine } from './engine';
 import { companionNamed, type ToByteSource, withCompanions, withContainer } from './file-access';
 import { createMomentKernel } from './kernel/moment-kernel';
+import { SlabFit } from './slab-fit';
 import { nextTurn } from './turn';
 
 /** Reading takes about two thirds of loading, summing up the rest. */
@@ -31,6 +33,7 @@ const hashBytes = 1 << 20;
 /** One loaded slab. */
 interface Loaded {
   readonly rows: RowRange;
+  readonly ny: number;
   readonly nx: number;
   readonly bands: SlabBands;
 }
@@ -60,6 +63,12 @@ export function createEngineCore(toByteSource: ToByteSource): WorkerEngine {
       where: '',
       hint: 'Open the scan again.',
     });
+  };
+
+  const slabFit = (scanId: number, plan: FitPlan): SlabFit => {
+    const { bands, ...place } = slabOf(scanId);
+    const { tiled, context } = bands.data;
+    return new SlabFit({ ...place, tiled, axis: context.axis }, plan);
   };
 
   return {
@@ -100,7 +109,8 @@ export function createEngineCore(toByteSource: ToByteSource): WorkerEngine {
           const data = await prepare(steps, slab, signal, (share) =>
             onProgress(readingShare + (1 - readingShare) * share),
           );
-          const loaded = { rows, nx: plan.meta.shape.nx, bands: new SlabBands(data, kernel) };
+          const { ny, nx } = plan.meta.shape;
+          const loaded = { rows, ny, nx, bands: new SlabBands(data, kernel) };
           slabs.set(scanId, loaded);
           return summaryOf(loaded);
         }),
@@ -126,6 +136,14 @@ export function createEngineCore(toByteSource: ToByteSource): WorkerEngine {
       const { bands, nx } = slabOf(scanId);
       return maskedRowSums(bands.data.tiled, nx, mask);
     },
+
+    fitNodes: (callId, scanId, plan, known, onTile) =>
+      stoppable(callId, (signal) => slabFit(scanId, plan).nodes(known, signal, onTile)),
+
+    fitRows: (callId, scanId, plan, nodes, usualChi2r, known, onTile) =>
+      stoppable(callId, (signal) =>
+        slabFit(scanId, plan).rows(nodes, usualChi2r, known, signal, onTile),
+      ),
 
     release: async (scanId) => {
       slabs.delete(scanId);

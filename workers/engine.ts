@@ -7,7 +7,9 @@
 import type { ScanChoices } from '../src/io/scan-choices';
 import type { Inspection, Preview, ScanPlan } from '../src/io/scan-plan';
 import type { BandQuantity, EnergyBand } from '../src/science/bands/band';
-import type { PixelMap, ScanMeta } from '../src/science/scan';
+import type { FitPlan } from '../src/science/fit/fit-plan';
+import type { PixelFit } from '../src/science/fit/pixel-fit';
+import type { DerivedMap, PixelMap, ScanMeta } from '../src/science/scan';
 
 /** A file a worker can open by itself; a Blob crosses without its bytes being copied. */
 export type SourceHandle =
@@ -43,6 +45,17 @@ export interface BandMap {
   readonly values: Float64Array;
   readonly errors: Float64Array | null;
 }
+
+/** Fitted pixels, as they come. */
+export interface FitTile {
+  /** numbers of the pixels on the whole scan, y × nx + x */
+  readonly pixels: Int32Array;
+  /** one row for each, as `recordLayout` says */
+  readonly records: Float64Array;
+}
+
+/** Rows of fitted pixels of a worker's rows, (rows × nx × record length), status 0 where there is none; null for nothing. */
+export type FitKnown = Float64Array | null;
 
 /** What a worker says of the slab it has just loaded. */
 export interface SlabSummary {
@@ -93,6 +106,34 @@ export interface WorkerEngine {
     scanId: number,
     mask: Uint8Array,
   ): Promise<{ readonly sums: Float64Array; readonly pixels: Uint32Array }>;
+  /**
+   * Fits the nodes in this worker's rows (`fit-order.ts`), but for those known; tiles come as they are done, all of them
+   * before it resolves.
+   *
+   * @returns false when it was stopped
+   */
+  fitNodes(
+    callId: number,
+    scanId: number,
+    plan: FitPlan,
+    known: FitKnown,
+    onTile: (tile: FitTile) => Promise<void>,
+  ): Promise<boolean>;
+  /**
+   * The same for the other pixels.
+   *
+   * @param nodes - rows of all of the scan's nodes
+   * @param usualChi2r - reduced χ² of most nodes
+   */
+  fitRows(
+    callId: number,
+    scanId: number,
+    plan: FitPlan,
+    nodes: Float64Array,
+    usualChi2r: number,
+    known: FitKnown,
+    onTile: (tile: FitTile) => Promise<void>,
+  ): Promise<boolean>;
   release(scanId: number): Promise<void>;
   cancel(callId: number): Promise<void>;
 }
@@ -118,6 +159,30 @@ export interface ScanOverview {
   readonly warnings: readonly string[];
 }
 
+export type { PixelFit };
+
+/** A model fitted to every pixel, or to as many as there was time for. */
+export interface ScanFit {
+  /** as asked, with a start for every centre and width */
+  readonly plan: FitPlan;
+  /** by their names in the contract, in the recipe's order; the arrays fill up while the fit runs */
+  readonly maps: readonly DerivedMap[];
+  /** −2 ln L beside that of a perfect fit, Σ r² for uniform noise; free parameters that were not at a bound */
+  readonly deviance: PixelMap;
+  readonly freeCount: PixelMap;
+  /** pixels of each status, 0 to 4 */
+  readonly statusCounts: readonly number[];
+  /** false where it was stopped; handed back as `previous`, it goes on */
+  readonly isWhole: boolean;
+}
+
+export interface FitOptions extends CallOptions {
+  /** Told of the maps, the same arrays each time, and which pixels are new in them. */
+  readonly onMaps?: (maps: readonly DerivedMap[], pixels: Int32Array) => void;
+  /** a fit of the same plan that was stopped: its pixels are kept */
+  readonly previous?: ScanFit;
+}
+
 /** One open scan, spread over the pool's workers. */
 export interface OpenScan {
   readonly plan: ScanPlan;
@@ -125,6 +190,15 @@ export interface OpenScan {
   /** Whole maps of one band, in the order asked. */
   bandMaps(request: BandRequest, options?: CallOptions): Promise<readonly BandMap[]>;
   spectrum(pixel: Pixel): Promise<Float64Array>;
+  /**
+   * Fits every pixel: nodes of a coarse grid first, then the rest. What is missing of the plan's starts
+   * is estimated from the mean spectrum. Does not depend on the number of workers. A stop keeps what is done.
+   */
+  fit(plan: FitPlan, options?: FitOptions): Promise<ScanFit>;
+  /**
+   * One pixel's fit in full, close to the minimum; from a fit of the scan's values there, where one is given.
+   */
+  fitPixel(plan: FitPlan, pixel: Pixel, from?: ScanFit): Promise<PixelFit>;
   /** Mean spectrum of the pixels of `mask` (ny × nx, 1 = take); NaN where none had data. */
   meanSpectrum(mask: Uint8Array): Promise<Float64Array>;
   release(): Promise<void>;

@@ -1,8 +1,11 @@
 /** One open scan: questions go to the workers that hold the rows, answers are put together. */
 import { RimlightError, throwIfAborted } from '../src/errors';
 import type { ScanPlan } from '../src/io/scan-plan';
+import { createFitModel } from '../src/science/fit/fit-model';
+import { fitOne } from '../src/science/fit/pixel-fit';
 import { joinedMaps, maskRows, meanOfRows } from './assemble';
 import type { OpenScan, Pixel, RowRange, ScanOverview } from './engine';
+import { fitScan, startOfPixel } from './scan-fit';
 import type { Seat } from './seat';
 
 /** A worker's place and the rows it holds. */
@@ -16,6 +19,7 @@ export function createOpenScan(
   plan: ScanPlan,
   overview: ScanOverview,
   slabs: readonly SlabSeat[],
+  newCallId: () => number,
 ): OpenScan {
   const { shape } = plan.meta;
   const withErrors = overview.meta.noise.kind !== 'none';
@@ -53,6 +57,21 @@ export function createOpenScan(
       assertHeld();
       const { seat } = slabOf(pixel);
       return seat.callOn(scanId, (engine) => engine.spectrum(scanId, pixel));
+    },
+
+    async fit(asked, options = {}) {
+      assertHeld();
+      return fitScan({ scanId, overview, slabs, newCallId }, asked, options);
+    },
+
+    async fitPixel(asked, pixel, from) {
+      assertHeld();
+      const { seat } = slabOf(pixel);
+      const counts = await seat.callOn(scanId, (engine) => engine.spectrum(scanId, pixel));
+      const { axis } = overview.meta;
+      const model = createFitModel(asked, axis);
+      const start = from === undefined ? null : startOfPixel(from, axis, pixel);
+      return fitOne(model, counts.subarray(asked.firstChannel, asked.endChannel), start);
     },
 
     async meanSpectrum(mask) {

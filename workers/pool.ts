@@ -87,7 +87,7 @@ class Pool implements ScanEngine {
     try {
       const overview = await this.#loadAll(scanId, inputs, plan, slabs, options);
       throwIfAborted(options.signal, what);
-      return createOpenScan(scanId, plan, overview, slabs);
+      return createOpenScan(scanId, plan, overview, slabs, () => this.#newId());
     } catch (error) {
       await Promise.allSettled(slabs.map(({ seat }) => seat.release(scanId)));
       throw options.signal?.aborted === true ? cancelledError(what) : error;

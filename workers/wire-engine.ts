@@ -14,7 +14,7 @@ import {
   wrap,
 } from 'comlink';
 import type { Inspection } from '../src/io/scan-plan';
-import type { WorkerEngine } from './engine';
+import type { FitTile, WorkerEngine } from './engine';
 import { fromWire, registerWireErrors, toWire, type WireError } from './wire-errors';
 
 /** An inspection whose problems have become plain data. */
@@ -76,6 +76,12 @@ export function serveEngine(core: WorkerEngine, endpoint?: Endpoint): void {
       const found = await core.maskedRowSums(...call);
       return transfer(found, [found.sums.buffer, found.pixels.buffer]);
     },
+    fitNodes: (callId, scanId, plan, known, onTile) =>
+      thenLetGoOf(onTile, (tell) => core.fitNodes(callId, scanId, plan, known, tell)),
+    fitRows: (callId, scanId, plan, nodes, usualChi2r, known, onTile) =>
+      thenLetGoOf(onTile, (tell) =>
+        core.fitRows(callId, scanId, plan, nodes, usualChi2r, known, tell),
+      ),
   };
   expose(served, endpoint);
 }
@@ -92,6 +98,17 @@ async function thenLetGo<T>(
     });
   } finally {
     (onProgress as OnProgress & Partial<Remote<ProxyMarked>>)[releaseProxy]?.();
+  }
+}
+
+type OnTile = (tile: FitTile) => Promise<void>;
+
+/** The same for tiles, which are moved; whoever sends one may wait until it has arrived. */
+async function thenLetGoOf<T>(onTile: OnTile, work: (tell: OnTile) => Promise<T>): Promise<T> {
+  try {
+    return await work((tile) => onTile(transfer(tile, [tile.pixels.buffer, tile.records.buffer])));
+  } finally {
+    (onTile as OnTile & Partial<Remote<ProxyMarked>>)[releaseProxy]?.();
   }
 }
 
@@ -118,6 +135,10 @@ export function connectEngine(endpoint: Endpoint): EngineConnection {
     bandMaps: (...call) => remote.bandMaps(...call),
     spectrum: (...call) => remote.spectrum(...call),
     maskedRowSums: (scanId, mask) => remote.maskedRowSums(scanId, transfer(mask, [mask.buffer])),
+    fitNodes: (callId, scanId, plan, known, onTile) =>
+      remote.fitNodes(callId, scanId, plan, known, proxy(onTile)),
+    fitRows: (callId, scanId, plan, nodes, usualChi2r, known, onTile) =>
+      remote.fitRows(callId, scanId, plan, nodes, usualChi2r, known, proxy(onTile)),
     release: (...call) => remote.release(...call),
     cancel: (...call) => remote.cancel(...call),
   };

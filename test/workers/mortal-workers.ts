@@ -69,6 +69,8 @@ function watched(core: MortalWorker['core'], called: string[]): WorkerEngine {
     bandMaps: note('bandMaps'),
     spectrum: note('spectrum'),
     maskedRowSums: note('maskedRowSums'),
+    fitNodes: note('fitNodes'),
+    fitRows: note('fitRows'),
     release: note('release'),
     cancel: note('cancel'),
   };

@@ -96,3 +96,15 @@ export function parabolaFall(
   }
   return fall;
 }
+
+/** The same along a share of the step: the slope counts in full, the curve by the square. */
+export function partOfFall(
+  { gradient }: StepProblem,
+  { step, gain }: BoundedStep,
+  share: number,
+): number {
+  if (share === 1) return gain;
+  let slope = 0;
+  for (let i = 0; i < step.length; i++) slope += 2 * gradient[i] * step[i];
+  return share * slope - share * share * (slope - gain);
+}

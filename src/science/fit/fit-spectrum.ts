@@ -6,9 +6,10 @@
  * D. W. Marquardt, J. Soc. Ind. Appl. Math. 11, 431 (1963)
  */
 import type { ChannelSpan } from '../peaks/shape';
-import { BoundedStep, type StepProblem } from './bounded-step';
+import { BoundedStep, partOfFall } from './bounded-step';
 import { createPlainFitKernel, type FitKernel, poissonScale } from './fit-kernel';
 import { createLayout, type FitLayout, type FitModel, followTies } from './fit-model';
+import { clip, move, stride } from './fit-move';
 import { type FitStatus, fitStatus } from './fit-plan';
 import { Information } from './information';
 
@@ -137,12 +138,13 @@ export class SpectrumFitter {
     return found;
   }
 
-  /** (parameters, parameters) of the last fit; NaN where there is no error, 0 for fixed parameters. */
-  covariance(): Float64Array {
-    const size = this.model.plan.parameters.length;
-    const out = new Float64Array(size * size);
+  /**
+   * The covariance of the last fit; NaN where there is no error, 0 for fixed parameters.
+   *
+   * @param out - (parameters, parameters), overwritten
+   */
+  writeCovariance(out: Float64Array): void {
     this.#information?.writeCovariance(out, this.#errorScale(), this.model);
-    return out;
   }
 
   /** Expected counts of the components that are in, at the values found: in the kernel's `model`. */
@@ -187,9 +189,9 @@ export class SpectrumFitter {
         return true;
       }
       if (damping > 0) step.find(information, damping);
-      const share = this.#stride(layout, step.step);
-      const predicted = this.#predict(information, step, share);
-      this.#move(layout, values, step.step, share, next);
+      const share = stride(this.model, layout, values, step.step);
+      const predicted = partOfFall(information, step, share);
+      move(this.model, layout, values, step.step, share, next);
       this.#linearise(layout, information, next);
       const gain = deviance - kernel.sums.deviance;
       if (predicted > 0 && gain > 0) {
@@ -220,7 +222,7 @@ export class SpectrumFitter {
   #polish(layout: FitLayout, { step }: BoundedStep, deviance: number): void {
     const { values } = this.found;
     const { next } = this.#informationOf(layout);
-    this.#move(layout, values, step, 1, next);
+    move(this.model, layout, values, step, 1, next);
     this.evaluate(next, layout.isIn, false);
     if (this.kernel.sums.deviance <= deviance) values.set(next);
     else this.evaluate(values, layout.isIn, false);
@@ -230,46 +232,6 @@ export class SpectrumFitter {
   #unit(deviance: number): number {
     if (this.model.plan.noise.kind !== 'uniform') return 1;
     return deviance / Math.max(1, this.found.channels - this.model.plan.parameters.length);
-  }
-
-  #predict(information: StepProblem, { step, gain }: BoundedStep, share: number): number {
-    if (share === 1) return gain;
-    let slope = 0;
-    for (let i = 0; i < step.length; i++) slope += information.gradient[i] * step[i];
-    // Of 2 g·δ − δHδ, the second part falls with the square.
-    return share * 2 * slope - share * share * (2 * slope - gain);
-  }
-
-  /** The share of the step that moves no peak further than it is wide. */
-  #stride({ free }: FitLayout, step: Float64Array): number {
-    const { strides } = this.model;
-    const { values } = this.found;
-    let share = 1;
-    for (let i = 0; i < free.length; i++) {
-      const widths = strides[free[i]];
-      if (widths.length === 0) continue;
-      let most = 0;
-      for (const width of widths) most += Math.abs(values[width]);
-      const length = Math.abs(step[i]);
-      if (most > 0 && length * share > most) share = most / length;
-    }
-    return share;
-  }
-
-  #move(
-    { free }: FitLayout,
-    from: Float64Array,
-    step: Float64Array,
-    share: number,
-    to: Float64Array,
-  ): void {
-    const { plan, least, most } = this.model;
-    to.set(from);
-    for (let i = 0; i < free.length; i++) {
-      const index = free[i];
-      to[index] = clip(from[index] + share * step[i], least[index], most[index]);
-    }
-    followTies(plan, to);
   }
 
   /** Errors, χ² and status at the values found. */
@@ -310,8 +272,4 @@ export class SpectrumFitter {
     }
     return step;
   }
-}
-
-function clip(value: number, least: number, most: number): number {
-  return Math.min(Math.max(value, least), most);
 }

@@ -23,6 +23,7 @@ export function countsLimits(
   for (const counts of spectra) {
     for (let k = channels.from; k < channels.to; k++) {
       const value = counts[k] ?? Number.NaN;
+      if (!Number.isFinite(value)) continue;
       if (value < low) low = value;
       if (value > high) high = value;
       if (value > 0 && value < lowestPositive) lowestPositive = value;
@@ -33,10 +34,14 @@ export function countsLimits(
   return { low: low < 0 ? -roundUp(-low * 1.04) : 0, high: top };
 }
 
+/** Beyond it there is no rounder number; no detector counts so far. */
+const largestRounded = 1e300;
+
 const mantissas = [1, 1.25, 1.5, 2, 2.5, 3, 4, 5, 6, 8, 10] as const;
 
-/** The next of 1, 1.25, 1.5, 2, … 10 times a power of ten, at or above a positive value. */
+/** The next of 1, 1.25, 1.5, 2, … 10 times a power of ten, at or above a positive value that is finite. */
 export function roundUp(value: number): number {
+  if (value > largestRounded) return largestRounded;
   let decade = 1;
   while (decade * 10 <= value) decade *= 10;
   while (decade > value) decade /= 10;

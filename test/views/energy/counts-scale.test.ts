@@ -31,4 +31,20 @@ describe('the counts axis', () => {
       }),
     );
   });
+
+  it('takes no notice of what is not finite, and ends for any counts', () => {
+    const odd = Float64Array.of(Number.POSITIVE_INFINITY, 7, Number.NEGATIVE_INFINITY, Number.NaN);
+    expect(countsLimits([odd], all, false)).toEqual({ low: 0, high: 8 });
+    const huge = countsLimits([Float64Array.of(1e308, 1)], { from: 0, to: 2 }, true);
+    expect(Number.isFinite(huge.high)).toBe(true);
+    expect(huge.low).toBeGreaterThan(0);
+  });
+
+  it('has room where there are no counts at all', () => {
+    const empty = Float64Array.of(0, 0, Number.NaN, 0);
+    expect(countsLimits([empty], all, false)).toEqual({ low: 0, high: 1 });
+    const { low, high } = countsLimits([empty], all, true);
+    expect(low).toBeGreaterThan(0);
+    expect(high).toBeGreaterThan(low);
+  });
 });

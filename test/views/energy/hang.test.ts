@@ -21,4 +21,14 @@ describe('tiles over their bands', () => {
       }),
     );
   });
+
+  it('hang right above their intervals where there is room', () => {
+    const lefts = hangTiles({ centresPx: [100, 300, 700], slotPx: 100, fromPx: 0, toPx: 900 });
+    expect(lefts).toEqual([50, 250, 650]);
+  });
+
+  it('stay side by side where they are more than the room holds', () => {
+    const lefts = hangTiles({ centresPx: [10, 20, 30, 40], slotPx: 100, fromPx: 5, toPx: 305 });
+    expect(lefts).toEqual([5, 105, 205, 305]);
+  });
 });

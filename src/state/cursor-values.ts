@@ -29,6 +29,21 @@ export function valuesAt(maps: readonly DerivedMap[], { y, x }: Pixel): readonly
   });
 }
 
+/**
+ * What a narrow column has no room for: heights, which follow from area and width, how many rounds
+ * a fit took, and energies of Raman lines, which are told as shifts.
+ */
+export function withoutMinor(rows: readonly ValueRow[]): readonly ValueRow[] {
+  const names = new Set(rows.map(({ name }) => name));
+  return rows.filter(({ name }) => {
+    const parsed = parseMapName(name);
+    if (parsed?.kind === 'fit-quality') return parsed.quantity === 'chi2r';
+    if (parsed?.kind !== 'fit') return true;
+    if (parsed.parameter === 'height') return false;
+    return parsed.parameter !== 'centre' || !names.has(`fit.${parsed.component}.centre_cm1`);
+  });
+}
+
 const energies: ReadonlySet<string> = new Set(['centroid', 'median', 'peak_at']);
 
 /**
@@ -63,6 +78,9 @@ const quantityWords: Readonly<Record<string, string>> = {
   peak_at: 'energy of it',
 };
 
+/** Tells a component from a band of the same name. */
+export const fitSuffix = 'fit';
+
 const fitWords: Readonly<Record<string, string>> = {
   centre_cm1: 'shift',
   needed: 'needed, ΔBIC',
@@ -80,9 +98,15 @@ export function wordsOf(name: string): Pick<ValueRow, 'group' | 'label'> {
     case 'band':
       return { group: parsed.band, label: quantityWords[parsed.quantity] ?? parsed.quantity };
     case 'fit':
-      return { group: parsed.component, label: fitWords[parsed.parameter] ?? parsed.parameter };
+      return {
+        group: `${parsed.component} ${fitSuffix}`,
+        label: fitWords[parsed.parameter] ?? parsed.parameter,
+      };
     case 'fit-quality':
-      return { group: 'fit', label: parsed.quantity === 'chi2r' ? 'χ² reduced' : parsed.quantity };
+      return {
+        group: fitSuffix,
+        label: parsed.quantity === 'chi2r' ? 'χ² reduced' : parsed.quantity,
+      };
     case 'strain':
       return {
         group: 'strain',

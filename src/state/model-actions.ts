@@ -168,6 +168,11 @@ export function specOf(component: ModelComponent, parameter: string): FullSpec {
   return typeof spec === 'number' ? { start: spec } : (spec ?? {});
 }
 
+/** The parameters of a component, in the order they are written. */
+export function parametersOf(component: ModelComponent): readonly string[] {
+  return shapeParameters(component.shape);
+}
+
 function change(
   workbench: Workbench,
   name: string,

@@ -28,6 +28,8 @@ export interface ViewState {
   /** photon energy under the cursor on the spectrum; null elsewhere */
   readonly cursorEv: number | null;
   readonly selection: Selection;
+  /** the next click on the spectrum adds a peak to the model */
+  readonly isAddingPeak: boolean;
 }
 
 export const initialView: ViewState = {
@@ -41,6 +43,7 @@ export const initialView: ViewState = {
   logCounts: false,
   cursorEv: null,
   selection: { kind: 'blend' },
+  isAddingPeak: false,
 };
 
 export type ViewStore = StoreApi<ViewState>;

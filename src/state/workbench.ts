@@ -2,7 +2,9 @@
 import type { ScanEngine } from '../../workers/engine';
 import { emptyRecipe } from '../recipe/defaults';
 import { type Crosshair, createCrosshair } from './crosshair';
+import { createFitStore, type FitStore } from './fit-store';
 import { followBands } from './follow-bands';
+import { followFit } from './follow-fit';
 import { followScanBlock } from './follow-scan-block';
 import { followSpectra } from './follow-spectra';
 import { createNotices, type Notices } from './notices';
@@ -19,6 +21,7 @@ export interface Workbench {
   readonly view: ViewStore;
   readonly results: ResultsStore;
   readonly spectra: SpectraStore;
+  readonly fit: FitStore;
   readonly crosshair: Crosshair;
   readonly notices: Notices;
 }
@@ -32,11 +35,13 @@ export function createWorkbench(engine: ScanEngine, savedView: Partial<ViewState
     view: createViewStore(savedView),
     results: createResultsStore(),
     spectra: createSpectraStore(),
+    fit: createFitStore(),
     crosshair: createCrosshair(),
     notices: createNotices(),
   };
   followBands(workbench);
   followSpectra(workbench);
+  followFit(workbench);
   followScanBlock(workbench);
   engine.onWorkerReplaced(({ worker, reason }) => {
     workbench.notices.say('warning', `Worker ${worker + 1} stopped (${reason}) and was replaced.`, {

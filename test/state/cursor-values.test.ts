@@ -77,7 +77,7 @@ describe('values under the cursor', () => {
   it('are named in few words, under what they belong to', () => {
     expect(wordsOf('band.tail.peak_at')).toEqual({ group: 'tail', label: 'energy of it' });
     expect(wordsOf('scan.height')).toEqual({ group: '', label: 'height' });
-    expect(wordsOf('fit.exciton.centre')).toEqual({ group: 'exciton', label: 'centre' });
+    expect(wordsOf('fit.exciton.centre')).toEqual({ group: 'exciton fit', label: 'centre' });
     expect(wordsOf('fit.chi2r')).toEqual({ group: 'fit', label: 'χ² reduced' });
   });
 

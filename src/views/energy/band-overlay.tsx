@@ -3,6 +3,7 @@ import type { ScaleLinear } from 'd3-scale';
 import { useMemo, useState } from 'react';
 import { addBandBetween, moveBandEnds, selectBand } from '../../state/band-actions';
 import { bandColours } from '../../state/band-colours';
+import { addPeakAt } from '../../state/model-actions';
 import { type PlacedBand, placedBands } from '../../state/placed-bands';
 import { useRecipe, useSession, useView, useWorkbench } from '../workbench-context';
 import { BandHandle, type DragEnds } from './band-handle';
@@ -15,6 +16,8 @@ interface Props {
   readonly heightPx: number;
 }
 
+/** Width of a new peak as a share of the energies shown. */
+const startingWidth = 0.04;
 /** A drag shorter than this is a click, px. */
 const leastDragPx = 4;
 
@@ -23,6 +26,7 @@ export function BandOverlay({ evToX, widthPx, heightPx }: Props): React.JSX.Elem
   const scan = useSession((session) => session.scan);
   const recipe = useRecipe((document) => document);
   const selection = useView((view) => view.selection);
+  const isAddingPeak = useView((view) => view.isAddingPeak);
   const [draftEv, setDraftEv] = useState<readonly [number, number] | null>(null);
   const bands = useMemo(() => (scan === null ? [] : placedBands(recipe, scan)), [recipe, scan]);
   const colours = useMemo(() => bandColours(recipe), [recipe]);
@@ -39,8 +43,14 @@ export function BandOverlay({ evToX, widthPx, heightPx }: Props): React.JSX.Elem
 
   const drawNew = (event: React.PointerEvent<SVGRectElement>): void => {
     if (event.button !== 0) return;
-    event.currentTarget.setPointerCapture(event.pointerId);
     const ev = evAt(event);
+    if (isAddingPeak) {
+      const [low = 0, high = 1] = evToX.domain();
+      workbench.view.setState({ isAddingPeak: false });
+      addPeakAt(workbench, ev, (high - low) * startingWidth);
+      return;
+    }
+    event.currentTarget.setPointerCapture(event.pointerId);
     setDraftEv([ev, ev]);
   };
   const followNew = (event: React.PointerEvent<SVGRectElement>): void => {

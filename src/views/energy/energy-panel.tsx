@@ -2,6 +2,7 @@
 import { scaleLinear } from 'd3-scale';
 import { useEffect, useMemo, useRef } from 'react';
 import { useSize } from '../map/use-size';
+import { PeakHandles } from '../model/peak-handles';
 import { useSession, useView, useWorkbench } from '../workbench-context';
 import { BandOverlay } from './band-overlay';
 import styles from './energy-panel.module.css';
@@ -57,6 +58,17 @@ export function EnergyPanel(): React.JSX.Element {
         <>
           <SpectrumView evToX={evToX} widthPx={widthPx} heightPx={heightPx} />
           <BandOverlay evToX={evToX} widthPx={widthPx} heightPx={heightPx} />
+          <PeakHandles
+            evToX={evToX}
+            widthPx={widthPx}
+            heightPx={heightPx}
+            box={{
+              left: panelLayout.leftPx,
+              right: widthPx - panelLayout.rightPx,
+              top: panelLayout.plotTopPx,
+              height: heightPx - panelLayout.bottomPx - panelLayout.plotTopPx,
+            }}
+          />
           <HungMaps evToX={evToX} widthPx={widthPx} />
         </>
       )}

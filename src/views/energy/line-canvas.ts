@@ -6,6 +6,8 @@
 export interface LineStyle {
   readonly colour: string;
   readonly widthPx: number;
+  /** lengths of dashes and gaps; left out: a full line */
+  readonly dashPx?: readonly number[];
 }
 
 export function clearCanvas(canvas: HTMLCanvasElement): void {
@@ -34,6 +36,7 @@ export function drawLine(
   context.strokeStyle = style.colour;
   context.lineWidth = style.widthPx;
   context.lineJoin = 'round';
+  context.setLineDash([...(style.dashPx ?? [])]);
   context.beginPath();
   let isDown = false;
   let column = Number.NaN;

@@ -1,10 +1,14 @@
 /** The spectra themselves: pins and mean by the plotting library, the hovered pixel on a canvas above it. */
 import { type ScaleLinear, scaleLinear, scaleLog } from 'd3-scale';
 import { useEffect, useMemo, useRef, useState } from 'react';
+import { componentColours } from '../../state/component-colours';
+import type { Pixel } from '../../state/crosshair';
+import type { PixelSpectrum } from '../../state/spectra-store';
 import { pinColour } from '../map/pin-styles';
 import { readTokens } from '../read-tokens';
-import { useSession, useSpectra, useView, useWorkbench } from '../workbench-context';
+import { useRecipe, useSession, useSpectra, useView, useWorkbench } from '../workbench-context';
 import { countsLimits } from './counts-scale';
+import { drawFit } from './draw-fit';
 import styles from './energy-panel.module.css';
 import { clearCanvas, drawLine, fitCanvas } from './line-canvas';
 import { panelLayout } from './panel-layout';
@@ -18,7 +22,9 @@ interface Props {
 }
 
 export function SpectrumView({ evToX, widthPx, heightPx }: Props): React.JSX.Element {
-  const { spectra } = useWorkbench();
+  const { spectra, fit } = useWorkbench();
+  const recipe = useRecipe((document) => document);
+  const componentShades = useMemo(() => componentColours(recipe), [recipe]);
   const theme = useView((view) => view.theme);
   const isLog = useView((view) => view.logCounts);
   const scan = useSession((session) => session.scan);
@@ -111,19 +117,30 @@ export function SpectrumView({ evToX, widthPx, heightPx }: Props): React.JSX.Ele
     );
     const xsPx = axis.centresEv.map((energy) => evToX(energy));
     const colour = readTokens(theme).ink;
+    const yOf = (counts: number): number => (isLog && counts <= 0 ? range[0] : countsToY(counts));
+    const { accent, ink2 } = readTokens(theme);
     const draw = (): void => {
       fitCanvas(canvas, widthPx, heightPx);
       clearCanvas(canvas);
       const { hovered } = spectra.getState();
-      if (hovered === null) return;
-      const yOf = (counts: number): number => (isLog && counts <= 0 ? range[0] : countsToY(counts));
-      drawLine(canvas, xsPx, yOf, hovered.counts, { colour, widthPx: 1.2 });
+      if (hovered !== null) drawLine(canvas, xsPx, yOf, hovered.counts, { colour, widthPx: 1.2 });
+      const { fitted } = fit.getState();
+      if (fitted === null) return;
+      const counts = spectrumAt(fitted.pixel, hovered, spectra.getState().pins);
+      if (counts === null) return;
+      const { firstChannel } = fitted.fit.plan;
+      const strip = { top: panelLayout.plotTopPx + 4, height: 22 };
+      const shown = { fit: fitted.fit, counts, firstChannel, colours: componentShades };
+      drawFit(canvas, { ...shown, evToX, yOf, strip, ink: ink2, accent });
     };
     draw();
-    return spectra.subscribe((now, before) => {
-      if (now.hovered !== before.hovered) draw();
-    });
-  }, [axis, evToX, limits, widthPx, heightPx, isLog, theme, spectra]);
+    const forgetSpectra = spectra.subscribe(draw);
+    const forgetFit = fit.subscribe(draw);
+    return () => {
+      forgetSpectra();
+      forgetFit();
+    };
+  }, [axis, evToX, limits, widthPx, heightPx, isLog, theme, spectra, fit, componentShades]);
 
   const plotBox = {
     left: panelLayout.leftPx,
@@ -150,6 +167,16 @@ export function SpectrumView({ evToX, widthPx, heightPx }: Props): React.JSX.Ele
 
 function clipOf(box: { left: number; right: number; top: number; bottom: number }): string {
   return `inset(${box.top}px ${box.right}px ${box.bottom}px ${box.left}px)`;
+}
+
+/** Counts of a pixel among the spectra on screen. */
+function spectrumAt(
+  { y, x }: Pixel,
+  hovered: PixelSpectrum | null,
+  pins: ReadonlyMap<string, PixelSpectrum>,
+): Float64Array | null {
+  const shown = hovered === null ? [...pins.values()] : [hovered, ...pins.values()];
+  return shown.find(({ pixel }) => pixel.y === y && pixel.x === x)?.counts ?? null;
 }
 
 /** A round limit above the hovered counts in view, so that the axis is drawn anew only when it must grow. */

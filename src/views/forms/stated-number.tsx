@@ -12,6 +12,8 @@ interface Props {
   readonly value: number | null;
   readonly rule: NumberRule;
   readonly onState: (value: number) => void;
+  /** the field was emptied; without it the value comes back */
+  readonly onClear?: () => void;
 }
 
 const pauseMs = 700;
@@ -34,7 +36,9 @@ export function StatedNumber(props: Props): React.JSX.Element {
     return () => clearTimeout(timer);
   }, [entered, value]);
   const take = (): void => {
-    if (entered === null) setText(textOf(value));
+    const { onClear } = latest.current;
+    if (text.trim() === '' && value !== null && onClear !== undefined) onClear();
+    else if (entered === null) setText(textOf(value));
     else if (entered !== value) latest.current.onState(entered);
   };
   return (

@@ -7,6 +7,7 @@ import { unbuiltByPath } from '../../state/unbuilt-blocks';
 import side from '../shell/side-column.module.css';
 import { useRecipe, useSession, useView, useWorkbench } from '../workbench-context';
 import { ConditionSteps } from './condition-steps';
+import { ModelCard } from './model-card';
 import { PinList } from './pin-list';
 import { readingInWords } from './reading-words';
 import styles from './recipe-column.module.css';
@@ -63,7 +64,8 @@ export function RecipeColumn(): React.JSX.Element {
             ))}
           </ul>
         </StepCard>
-        {(['model', 'strain', 'features'] as const).map((path) => {
+        <ModelCard isUnbuilt={unbuilt.has('model')} />
+        {(['strain', 'features'] as const).map((path) => {
           const title = unbuilt.get(path);
           if (title === undefined) return null;
           return (

@@ -1,6 +1,9 @@
 /** Right column: what is known of the pixel under the crosshair, then the settings of what is selected. */
+import type { Selection } from '../../state/view-store';
 import { BandSettings } from '../band/band-settings';
 import { BlendSettings } from '../blend/blend-settings';
+import { ComponentSettings } from '../model/component-settings';
+import { ModelSettings } from '../model/model-settings';
 import side from '../shell/side-column.module.css';
 import { useView } from '../workbench-context';
 import { PixelValues } from './pixel-values';
@@ -11,7 +14,20 @@ export function ValuesColumn(): React.JSX.Element {
   return (
     <aside className={`${side.column} ${styles.column}`} aria-label="Values and settings">
       <PixelValues />
-      {selection.kind === 'band' ? <BandSettings name={selection.name} /> : <BlendSettings />}
+      <Settings selection={selection} />
     </aside>
   );
+}
+
+function Settings({ selection }: { readonly selection: Selection }): React.JSX.Element {
+  switch (selection.kind) {
+    case 'band':
+      return <BandSettings name={selection.name} />;
+    case 'model':
+      return <ModelSettings />;
+    case 'component':
+      return <ComponentSettings name={selection.name} />;
+    default:
+      return <BlendSettings />;
+  }
 }

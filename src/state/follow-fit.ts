@@ -1,0 +1,64 @@
+/**
+ * Keeps the drawn fit in step with the crosshair and the model, and takes away maps of components
+ * that are gone. The maps of all pixels are made only when the user asks.
+ */
+import { createLatestWins } from '../../workers/latest-wins';
+import { parseMapName } from '../recipe/map-names';
+import { offeredMaps } from '../recipe/offered-maps';
+import { fitKey, planOf } from './fit-actions';
+import type { Workbench } from './workbench';
+
+export function followFit(workbench: Workbench): () => void {
+  const { session, recipe, crosshair, results, fit, notices } = workbench;
+  const drawing = createLatestWins();
+
+  const update = (): void => {
+    const { scan, scanNumber } = session.getState();
+    const document = recipe.getState().recipe;
+    const lastPin = document.pins?.at(-1);
+    const pixel =
+      crosshair.get() ?? (lastPin === undefined ? null : { y: lastPin.y, x: lastPin.x });
+    if (scan === null || pixel === null || document.model === undefined) {
+      drawing.clear();
+      if (fit.getState().fitted !== null) fit.setState({ fitted: null });
+      return;
+    }
+    const { ny, nx } = scan.open.plan.meta.shape;
+    if (pixel.y >= ny || pixel.x >= nx) return;
+    drawing.run(async () => {
+      const plan = planOf(document, scan);
+      if (plan === null) return;
+      const { scanFit, madeOf } = fit.getState();
+      const isOfThis = scanFit !== null && madeOf === fitKey(scanNumber, document);
+      const from = isOfThis ? scanFit : undefined;
+      const fitted = { pixel, fit: await scan.open.fitPixel(plan, pixel, from) };
+      if (session.getState().scanNumber === scanNumber) fit.setState({ fitted });
+    }, notices.sayError);
+  };
+
+  const dropStale = (): void => {
+    const offered = new Set(offeredMaps(recipe.getState().recipe).map(({ name }) => name));
+    results.remove((name) => {
+      const kind = parseMapName(name)?.kind;
+      return (kind === 'fit' || kind === 'fit-quality') && !offered.has(name);
+    });
+  };
+
+  const unsubscribers = [
+    crosshair.subscribe(update),
+    recipe.subscribe((now, before) => {
+      if (now.recipe.model !== before.recipe.model) dropStale();
+      if (now.recipe.model !== before.recipe.model || now.recipe.pins !== before.recipe.pins) {
+        update();
+      }
+    }),
+    session.subscribe((now, before) => {
+      if (now.scanNumber === before.scanNumber) return;
+      fit.setState({ madeOf: null, scanFit: null, fitted: null });
+      update();
+    }),
+  ];
+  return () => {
+    for (const unsubscribe of unsubscribers) unsubscribe();
+  };
+}

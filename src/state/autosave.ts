@@ -110,9 +110,10 @@ export async function loadLastWork(storage: WorkStorage): Promise<{
   if (work === null) return null;
   const parsed = parseRecipe(work.recipeText);
   if (!parsed.ok) return null;
-  const inputs =
-    work.url === null ? ((await storage.get(lastInputsKey)) as ScanInputs | null) : null;
-  return { work, recipe: parsed.recipe, inputs: inputs ?? null };
+  const kept = (await storage.get(lastInputsKey)) as ScanInputs | null | undefined;
+  // A page closed as it opened another scan leaves that scan's file beside the work on this one.
+  const isItsOwn = work.url === null && kept?.scan.name === work.scanName;
+  return { work, recipe: parsed.recipe, inputs: isItsOwn ? kept : null };
 }
 
 /** The recipe last used on the scan of this hash; null when there is none. */

@@ -11,6 +11,7 @@ import {
 import { parseMapName } from '../recipe/map-names';
 import type { RecipeBand } from '../recipe/schema';
 import type { BandFloor } from '../science/bands/band';
+import { sayUndoable } from './undoable';
 import type { Workbench } from './workbench';
 
 export function selectBand({ view }: Workbench, name: string): void {
@@ -52,12 +53,12 @@ export function moveBandEnds(
 }
 
 export function deleteBand(workbench: Workbench, name: string): void {
-  const { recipe, view, notices } = workbench;
+  const { recipe, view } = workbench;
   recipe.edit(`Delete band ${name}`, (now) => removeBand(now, name));
   const lead = parseMapName(view.getState().leadMap);
   if (lead?.kind === 'band' && lead.band === name) view.setState({ leadMap: 'scan.total' });
   view.setState({ selection: { kind: 'blend' } });
-  notices.say('done', `Band ${name} was deleted.`, { action: { label: 'Undo', run: recipe.undo } });
+  sayUndoable(workbench, `Band ${name} was deleted.`);
 }
 
 export function setBandName(workbench: Workbench, from: string, to: string): void {

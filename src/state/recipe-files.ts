@@ -3,6 +3,7 @@ import { formatProblem, recipeError } from '../recipe/problems';
 import type { Recipe } from '../recipe/schema';
 import { serialiseRecipe } from '../recipe/serialise';
 import { parseRecipe } from '../recipe/validate';
+import { sayUndoable } from './undoable';
 import type { Workbench } from './workbench';
 
 /** A text file to be handed to the user. */
@@ -57,5 +58,5 @@ export function openRecipe(workbench: Workbench, text: string, fileName: string)
   recipe.edit(`Open ${fileName}`, (before) =>
     given.scan === undefined && before.scan !== undefined ? { ...given, scan: before.scan } : given,
   );
-  notices.say('done', `${fileName} is in use.`, { action: { label: 'Undo', run: recipe.undo } });
+  sayUndoable(workbench, `${fileName} is in use.`);
 }

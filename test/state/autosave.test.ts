@@ -6,6 +6,7 @@ import { offerEarlierRecipe } from '../../src/state/earlier-recipe';
 import { openLastWork } from '../../src/state/last-work';
 import { createWorkbench } from '../../src/state/workbench';
 import { createInProcessEngine } from '../../workers/in-process-engine';
+import { makeScan } from '../workers/made-scan';
 import { memoryStorage, openWorkbench, pause, twoBands } from './open-workbench';
 
 const now = () => new Date('2026-05-04T10:00:00Z');
@@ -33,6 +34,53 @@ describe('the work of a visit', () => {
     while (!again.results.getState().maps.has('band.low.integral')) await pause();
     expect(again.results.getState().maps.get('band.low.integral')?.values).toEqual(before?.values);
     expect(again.recipe.getState().recipe).toEqual(recipe);
+  });
+
+  it('goes through storage and back: a file of the user’s comes with the recipe it was left with', async () => {
+    const storage = memoryStorage();
+    const first = createWorkbench(createInProcessEngine());
+    startAutosave(first, storage, now);
+    const { inputs } = makeScan();
+    await openLastWork(first, inputs, twoBands);
+    moveBandEnds(first, { name: 'low' }, { fromEv: 1.83, toEv: 1.87 });
+    await written();
+    while (!first.results.getState().maps.has('band.low.integral')) await pause();
+    const last = await loadLastWork(storage);
+    if (last === null || last.inputs === null) throw new Error('the file was not kept');
+    const second = createWorkbench(createInProcessEngine());
+    await openLastWork(second, last.inputs, last.recipe);
+    while (!second.results.getState().maps.has('band.low.integral')) await pause();
+    const { maps } = second.results.getState();
+    expect(second.recipe.getState().recipe.bands?.[0]).toMatchObject({ from: 1.83, to: 1.87 });
+    expect(maps.get('band.low.integral')?.values).toEqual(
+      first.results.getState().maps.get('band.low.integral')?.values,
+    );
+  });
+
+  it('never comes with the file of another scan', async () => {
+    const storage = memoryStorage();
+    const { workbench, made } = await openWorkbench();
+    startAutosave(workbench, storage, now);
+    await openLastWork(workbench, made.inputs, twoBands);
+    await written();
+    expect((await loadLastWork(storage))?.inputs?.scan.name).toBe('made.npz');
+    const other = { ...made.inputs, scan: { ...made.inputs.scan, name: 'other.npz' } };
+    await storage.set('last-inputs', other);
+    const last = await loadLastWork(storage);
+    expect(last?.work.scanName).toBe('made.npz');
+    expect(last?.inputs).toBeNull();
+  });
+
+  it('keeps no copy of a file the page can fetch again', async () => {
+    const storage = memoryStorage();
+    const { workbench } = await openWorkbench();
+    startAutosave(workbench, storage, now);
+    moveBandEnds(workbench, { name: 'low' }, { fromEv: 1.83, toEv: 1.87 });
+    await written();
+    const last = await loadLastWork(storage);
+    expect(last?.work.url).toBe('/sample-data/made.npz');
+    expect(last?.inputs).toBeNull();
+    expect(storage.kept.get('last-inputs') ?? null).toBeNull();
   });
 
   it('that can no longer be read is told of, and leaves the screen as it is', async () => {
@@ -94,5 +142,19 @@ describe('the recipe kept under a scan’s hash', () => {
     expect(second.recipe.getState().recipe).toEqual(edited);
     second.recipe.undo();
     expect(second.recipe.getState().recipe).toEqual(twoBands);
+  });
+
+  it('is not offered over another scan', async () => {
+    const storage = memoryStorage();
+    const first = await openWorkbench();
+    startAutosave(first.workbench, storage, now);
+    moveBandEnds(first.workbench, { name: 'low' }, { fromEv: 1.83, toEv: 1.87 });
+    await written();
+    const second = createWorkbench(createInProcessEngine());
+    offerEarlierRecipe(second, storage);
+    await openLastWork(second, first.made.inputs, twoBands);
+    while (second.notices.getState().notices.length === 0) await pause();
+    await openLastWork(second, makeScan({ seed: 4 }).inputs, twoBands);
+    expect(second.notices.getState().notices).toEqual([]);
   });
 });

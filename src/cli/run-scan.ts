@@ -1,11 +1,12 @@
 /** One scan of a run: look, load, derive, write. */
 import { version } from '../../package.json';
-import type { CallOptions, ScanEngine } from '../../workers/engine';
+import type { CallOptions, ScanEngine, ScanFit } from '../../workers/engine';
 import type { Inspection, ScanPlan } from '../io/scan-plan';
 import type { DerivedMap } from '../science/scan';
 import { blendPicture } from './blend-picture';
 import type { Context } from './command';
 import { deriveMaps } from './derive-maps';
+import { fitModel } from './fit-maps';
 import { startProgress } from './progress';
 import { type FoundFile, findScan, type RecipeFile } from './recipe-file';
 import { ResultFolder } from './result-folder';
@@ -29,6 +30,8 @@ interface Derived {
   readonly inspection: Inspection;
   readonly plan: ScanPlan;
   readonly maps: readonly DerivedMap[];
+  /** null for a recipe without a model; its maps are among `maps` */
+  readonly fit: ScanFit | null;
   readonly sha256: string;
   readonly warnings: readonly string[];
 }
@@ -67,19 +70,22 @@ async function derive(scanPath: string, tools: RunTools, watch: Stopwatch): Prom
   const scan = await engine.open(inputs, plan, options(context, `Reading ${file.name}`));
   watch.lap('read');
   try {
-    const maps = await deriveMaps(scan, recipe, options(context, `Mapping ${file.name}`));
+    const derived = await deriveMaps(scan, recipe, options(context, `Mapping ${file.name}`));
     watch.lap('maps');
+    const fit = await fitModel(scan, recipe, options(context, `Fitting ${file.name}`));
+    watch.lap('fit');
+    const maps = [...derived, ...(fit?.maps ?? [])];
     const sha256 = await engine.sha256(inputs.scan, options(context, `Hashing ${file.name}`));
     watch.lap('hash');
     const warnings = [...inspection.warnings, ...scan.overview.warnings];
-    return { file, inspection, plan, maps, sha256, warnings };
+    return { file, inspection, plan, maps, fit, sha256, warnings };
   } finally {
     await scan.release();
   }
 }
 
 async function write(
-  { file, inspection, plan, maps, sha256, warnings }: Derived,
+  { file, inspection, plan, maps, fit, sha256, warnings }: Derived,
   folder: string,
   { request, recipeFile, engine, context }: RunTools,
   watch: Stopwatch,
@@ -102,6 +108,7 @@ async function write(
       scanSha256: sha256,
       recipeFile,
       maps,
+      fit,
       workers: engine.workerCount,
       timings: watch.laps(),
       warnings: [...warnings, ...workerNotes],

@@ -1,7 +1,9 @@
 /** summary.json: what came out in a few numbers, and how it came about. A public form: fields are only ever added. */
+import type { ScanFit } from '../../workers/engine';
 import type { Inspection } from '../io/scan-plan';
 import type { DerivedMap, ScanMeta } from '../science/scan';
 import { quantiles } from '../science/statistics/quantile';
+import { fitRecord } from './fit-maps';
 import { scanRecord } from './inspect-json';
 import type { RecipeFile } from './recipe-file';
 
@@ -13,6 +15,8 @@ export interface SummaryParts {
   readonly scanSha256: string;
   readonly recipeFile: RecipeFile;
   readonly maps: readonly DerivedMap[];
+  /** null for a recipe without a model */
+  readonly fit: ScanFit | null;
   readonly workers: number;
   readonly timings: Readonly<Record<string, number>>;
   readonly warnings: readonly string[];
@@ -36,6 +40,7 @@ export function summaryText(parts: SummaryParts): string {
     },
     recipe: { file: recipeFile.name, title: recipeFile.recipe.title ?? null },
     maps: Object.fromEntries(maps.map((map) => [map.name, mapRecord(map)])),
+    ...(parts.fit === null ? {} : { fit: fitRecord(parts.fit) }),
     warnings: parts.warnings,
     workers: parts.workers,
     timings_s: parts.timings,

@@ -21,7 +21,6 @@ const unbuiltSteps: ReadonlySet<StepName> = new Set<StepName>([
 
 /** Blocks that this build cannot run, and what they would make. */
 const unbuiltFields = {
-  model: 'the peak model',
   strain: 'the strain maps',
   features: 'the features',
 } as const satisfies Partial<Record<keyof Recipe, string>>;

@@ -21,10 +21,9 @@ describe('what this build cannot run', () => {
     expect(() => assertExecutable(built)).not.toThrow();
   });
 
-  it('is every step that is not off, and the model, strain and features', () => {
+  it('is every step that is not off, and strain and features', () => {
     expect(unbuiltBlocks(ensureRecipe(contractRecipe)).map(({ path }) => path)).toEqual([
       ...contractRecipe.condition.map((_, index) => `condition[${index}]`),
-      'model',
       'strain',
       'features',
     ]);

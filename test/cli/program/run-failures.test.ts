@@ -98,17 +98,7 @@ describe('a single scan', () => {
 
 describe('a recipe', () => {
   it.each([
-    [
-      'model',
-      {
-        model: {
-          window: [1.82, 2.06],
-          noise: 'poisson',
-          components: [{ name: 'floor', shape: 'flat' }],
-        },
-      },
-      'the peak model',
-    ],
+    ['block', { features: { source: 'scan.height' } }, 'the features'],
     ['step', { condition: [{ step: 'despike', method: 'spectral' }] }, 'the despike step'],
   ])(
     'with a %s that this build cannot run is refused, never half run',

@@ -28,7 +28,8 @@ export function suggestModel(peaks: readonly FoundPeak[], laserEv: number | null
   return { components };
 }
 
-function isRamanLine({ fwhmEv, centreEv }: FoundPeak, laserEv: number | null): boolean {
+/** Whether a peak is narrow enough, and lies where Raman lines lie. */
+export function isRamanLine({ fwhmEv, centreEv }: FoundPeak, laserEv: number | null): boolean {
   if (laserEv === null || fwhmEv > widestRamanEv) return false;
   const shift = shiftCm1FromEv(centreEv, laserEv);
   return shift >= ramanReach[0] && shift <= ramanReach[1];

@@ -1,7 +1,7 @@
 /** Proposes a peak model from what stands out in the scan: its mean, its brightest pixel, its extremes in energy, its pins. */
 import type { OpenScan, Pixel } from '../../workers/engine';
 import { setModel } from '../recipe/model-edits';
-import { suggestModel } from '../recipe/suggest-model';
+import { isRamanLine, suggestModel } from '../recipe/suggest-model';
 import { type FoundPeak, findPeaks, withoutDoubles } from '../science/fit/find-peaks';
 import { varianceLine } from '../science/noise';
 import { gridOf } from '../science/peaks/shape';
@@ -9,8 +9,9 @@ import type { PixelMap } from '../science/scan';
 import { selectModel } from './model-actions';
 import type { Workbench } from './workbench';
 
-/** More than a model can be fitted with in earnest. */
-const mostPeaks = 8;
+/** More of them, each kept only where needed, would be tried in too many choices. */
+const mostBands = 3;
+const mostLines = 6;
 
 /** Puts a proposal in place of the model, as one edit; says so where nothing stands out of the noise. */
 export async function suggestPeaks(workbench: Workbench): Promise<void> {
@@ -43,11 +44,43 @@ function peaksOf(open: OpenScan, single: readonly Float64Array[]): readonly Foun
   const grid = gridOf(meta.axis, 0, meta.shape.nk);
   const varianceOf = variancesFor(open);
   const pixels = meta.shape.ny * meta.shape.nx;
-  const found = [
-    ...findPeaks(grid, meanSpectrum, varianceOf(meanSpectrum, pixels)),
-    ...single.flatMap((counts) => findPeaks(grid, counts, varianceOf(counts, 1))),
+  const seen = [
+    { counts: meanSpectrum, pixels },
+    ...single.map((counts) => ({ counts, pixels: 1 })),
   ];
-  return withoutDoubles(found).slice(0, mostPeaks);
+  const find = (spectra: typeof seen): readonly FoundPeak[] =>
+    withoutDoubles(
+      spectra.flatMap(({ counts, pixels: n }) => findPeaks(grid, counts, varianceOf(counts, n))),
+    );
+  const lines = find(seen)
+    .filter((peak) => isRamanLine(peak, meta.laserEv))
+    .slice(0, mostLines);
+  // Lines close together look like one wide peak: what lies under them is searched without them.
+  const cleared = seen.map(({ counts, pixels: n }) => ({
+    counts: withoutLines(counts, meta.axis.centresEv, lines),
+    pixels: n,
+  }));
+  const bands = find(cleared).filter((peak) => !isRamanLine(peak, meta.laserEv));
+  return [...lines, ...bands.slice(0, mostBands)];
+}
+
+/** Counts with a straight line across each peak, from foot to foot. */
+function withoutLines(
+  counts: Float64Array,
+  centresEv: Float64Array,
+  lines: readonly FoundPeak[],
+): Float64Array {
+  const cleared = counts.slice();
+  for (const { centreEv, fwhmEv } of lines) {
+    const first = centresEv.findIndex((energyEv) => energyEv > centreEv - 2 * fwhmEv);
+    const last = centresEv.findLastIndex((energyEv) => energyEv < centreEv + 2 * fwhmEv);
+    if (first < 0 || last <= first) continue;
+    const [from, to] = [cleared[first] ?? 0, cleared[last] ?? 0];
+    for (let k = first; k <= last; k++) {
+      cleared[k] = from + ((to - from) * (k - first)) / (last - first);
+    }
+  }
+  return cleared;
 }
 
 /** Variances of a spectrum that is the mean of so many pixels; of values that are no counts, from their own roughness. */

@@ -5,5 +5,7 @@ export const panelLayout = {
   tileTopPx: 18,
   tilePx: 84,
   plotTopPx: 136,
+  /** of the residuals of a fit, within the plot at its top */
+  residualPx: 22,
   bottomPx: 34,
 } as const;

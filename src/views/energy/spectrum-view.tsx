@@ -25,6 +25,7 @@ export function SpectrumView({ evToX, widthPx, heightPx }: Props): React.JSX.Ele
   const { spectra, fit } = useWorkbench();
   const recipe = useRecipe((document) => document);
   const componentShades = useMemo(() => componentColours(recipe), [recipe]);
+  const hasModel = recipe.model !== undefined;
   const theme = useView((view) => view.theme);
   const isLog = useView((view) => view.logCounts);
   const scan = useSession((session) => session.scan);
@@ -129,7 +130,7 @@ export function SpectrumView({ evToX, widthPx, heightPx }: Props): React.JSX.Ele
       const counts = spectrumAt(fitted.pixel, hovered, spectra.getState().pins);
       if (counts === null) return;
       const { firstChannel } = fitted.fit.plan;
-      const strip = { top: panelLayout.plotTopPx + 4, height: 22 };
+      const strip = { top: panelLayout.plotTopPx + 4, height: panelLayout.residualPx };
       const shown = { fit: fitted.fit, counts, firstChannel, colours: componentShades };
       drawFit(canvas, { ...shown, evToX, yOf, strip, ink: ink2, accent });
     };
@@ -157,7 +158,10 @@ export function SpectrumView({ evToX, widthPx, heightPx }: Props): React.JSX.Ele
         ref={hoverCanvas}
         style={{ width: widthPx, height: heightPx, clipPath: clipOf(plotBox) }}
       />
-      <span className={styles.unit} style={{ top: panelLayout.plotTopPx + 6 }}>
+      <span
+        className={styles.unit}
+        style={{ top: panelLayout.plotTopPx + 6 + (hasModel ? panelLayout.residualPx : 0) }}
+      >
         {overview?.meta.quantity ?? 'counts'} / channel
       </span>
       <span className={styles.caption}>photon energy (eV)</span>

@@ -14,7 +14,7 @@ export function ParameterRows({ component }: { readonly component: ModelComponen
     <table className={styles.parameters}>
       <thead>
         <tr>
-          <th scope="col">parameter</th>
+          <td />
           <th scope="col">start</th>
           <th scope="col">least</th>
           <th scope="col">most</th>

@@ -64,7 +64,8 @@ function PeakHandle(props: HandleProps): React.JSX.Element | null {
   const start = useRef<{ grip: Grip; x: number; peak: PlacedPeak } | null>(null);
   const x = evToX(peak.centreEv);
   if (x < box.left || x > box.right) return null;
-  const y = box.top + 14;
+  // Below the residuals.
+  const y = box.top + 40;
 
   const grab = (grip: Grip) => (event: React.PointerEvent<SVGElement>) => {
     if (event.button !== 0) return;

@@ -19,9 +19,9 @@ export interface RowShifts {
 
 /** A correlation of unlike rows of n pixels scatters by 1/√n; it must exceed this many times that. */
 const leastCorrelation = 4;
-/** Rows on either side that a row is put in line with. */
-const wanderReach = 4;
-const refineRounds = 6;
+const refineRounds = 3;
+/** Shifts that leave more than this of the rows' differences are not worth the blur they cost. */
+const mostLeft = 0.7;
 /** Fewer pixels tell nothing. */
 const fewestPixels = 8;
 
@@ -46,13 +46,13 @@ export function rowProfiles({ counts, shape }: ConditionedSlab): Float64Array {
 /**
  * Shifts of all rows from their profiles.
  *
- * Each row against the one before: the highest normalised cross-correlation over lags of up to twice
- * the greatest shift, between pixels by a parabola. The part that turns its sign from row to row (its
- * median) is the serpentine's. The rest adds up from row to row, and what of it wanders slowly (its
- * median over nine rows, fewer near the first and last row) is left where it is: it cannot be told from a
- * slanted or curved sample. So jumping rows are put right, drift is not. Then, to shed what errors have
- * added up, each row is put half the way towards where it best matches the mean of the two beside it, six
- * times over: that evens out what changes from row to row and hardly moves what changes within ten.
+ * First what turns its sign from row to row, the serpentine's: the median of how far each row lies
+ * from the one before, by the highest normalised cross-correlation over lags of up to twice the greatest
+ * shift, between pixels by a parabola. Then each row is put half the way towards where it best matches
+ * the mean of the two beside it, three times over. That evens out what jumps from row to row; a slant, and
+ * whatever bends over ten rows or more, stays: it cannot be told from a slanted or curved sample. Each
+ * of the two is kept only if rows then differ from those beside them by less than 0.7 of what they did (sum
+ * of squares): features alone suggest shifts too, which gain little.
  *
  * @param profiles - (ny × nx) of the whole scan
  * @throws RimlightError 'recipe' - for a greatest shift that is not above 0 or not below a quarter of the row
@@ -74,9 +74,13 @@ export function findRowShifts(
     steps[y] = lag;
   }
   const serpentinePx = alternation(steps);
-  const shiftsPx = withoutWander(runningSum(steps, serpentinePx));
-  for (let y = 0; y < ny; y++) shiftsPx[y] += y % 2 === 1 ? serpentinePx / 2 : -serpentinePx / 2;
-  for (let round = 0; round < refineRounds; round++) refine(profiles, nx, shiftsPx);
+  const none = new Float64Array(ny);
+  const serpentine = none.map((_, y) => (y % 2 === 1 ? serpentinePx / 2 : -serpentinePx / 2));
+  const start = isWorth(profiles, nx, none, serpentine) ? serpentine : none;
+  const refined = start.slice();
+  const lags = Math.ceil(2 * maxShiftPx);
+  for (let round = 0; round < refineRounds; round++) refine(profiles, nx, refined, lags);
+  const shiftsPx = isWorth(profiles, nx, start, refined) ? refined : start.slice();
   let limitedRows = 0;
   for (let y = 0; y < ny; y++) {
     if (Math.abs(shiftsPx[y]) > maxShiftPx) limitedRows++;
@@ -181,29 +185,8 @@ function alternation(steps: Float64Array): number {
   return known.length < 2 ? 0 : medianInPlace(known);
 }
 
-function runningSum(steps: Float64Array, serpentinePx: number): Float64Array {
-  const sums = new Float64Array(steps.length);
-  for (let y = 1; y < steps.length; y++) {
-    // Rows that could not be told have no step, and so stay where serpentine rows lie.
-    const own = Number.isNaN(steps[y])
-      ? 0
-      : steps[y] - (y % 2 === 1 ? serpentinePx : -serpentinePx);
-    sums[y] = sums[y - 1] + own;
-  }
-  return sums;
-}
-
-/** Less the running median, over as many rows on either side as there are, 4 at most. */
-function withoutWander(values: Float64Array): Float64Array {
-  const n = values.length;
-  return values.map((value, y) => {
-    const reach = Math.min(wanderReach, y, n - 1 - y);
-    return value - medianInPlace(values.slice(y - reach, y + reach + 1));
-  });
-}
-
 /** Each row, moved as found so far, against the mean of those beside it; half of what is left is added. */
-function refine(profiles: Float64Array, nx: number, shiftsPx: Float64Array): void {
+function refine(profiles: Float64Array, nx: number, shiftsPx: Float64Array, lags: number): void {
   const ny = shiftsPx.length;
   const rows = Array.from({ length: ny }, (_, y) =>
     movedProfile(profiles.subarray(y * nx, (y + 1) * nx), shiftsPx[y]),
@@ -212,9 +195,34 @@ function refine(profiles: Float64Array, nx: number, shiftsPx: Float64Array): voi
     const above = rows[y > 0 ? y - 1 : 1];
     const below = rows[y + 1 < ny ? y + 1 : ny - 2];
     const beside = above.map((value, x) => (value + below[x]) / 2);
-    const lag = bestLag(beside, rows[y], 2);
+    const lag = bestLag(beside, rows[y], lags);
     if (!Number.isNaN(lag)) shiftsPx[y] += lag / 2;
   }
+}
+
+/** Whether rows moved by `then` fit those beside them so much better than by `now`. */
+function isWorth(
+  profiles: Float64Array,
+  nx: number,
+  now: Float64Array,
+  then: Float64Array,
+): boolean {
+  return mismatch(profiles, nx, then) < mostLeft * mismatch(profiles, nx, now);
+}
+
+/** Sum of squared differences of each row from the mean of the two beside it. */
+function mismatch(profiles: Float64Array, nx: number, shiftsPx: Float64Array): number {
+  const rows = Array.from(shiftsPx, (shift, y) =>
+    movedProfile(profiles.subarray(y * nx, (y + 1) * nx), shift),
+  );
+  let sum = 0;
+  for (let y = 1; y + 1 < rows.length; y++) {
+    for (let x = 0; x < nx; x++) {
+      const rest = rows[y][x] - (rows[y - 1][x] + rows[y + 1][x]) / 2;
+      if (!Number.isNaN(rest)) sum += rest * rest;
+    }
+  }
+  return sum;
 }
 
 function movedProfile(profile: Float64Array, shiftPx: number): Float64Array {

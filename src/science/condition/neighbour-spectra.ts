@@ -1,5 +1,7 @@
 /** The spectra of the pixels around one, channel by channel: their median and how far they spread. */
+
 import type { ConditionedSlab } from './conditioned';
+import { widestSpikeChannels } from './spike-finder';
 
 /**
  * Means of the second greatest of n normal numbers, in σ (the greatest for n < 4): the spread between it and
@@ -12,7 +14,10 @@ const secondGreatest = [0, 0, 0.5642, 0.8463, 0.297, 0.495, 0.6418, 0.7574, 0.85
 export class NeighbourSpectra {
   /** (nk) median of the neighbours that have data; NaN where none has */
   readonly median: Float64Array;
-  /** (nk) variance among them, without their highest and lowest where there are four or more */
+  /**
+   * (nk) variance among them of how far a channel stands out from those 3 to its left and right, without
+   * the highest and lowest where there are four or more: of narrow lines, not of brightness
+   */
   readonly spread: Float64Array;
   readonly #slab: ConditionedSlab;
   readonly #sorted = new Float64Array(8);
@@ -30,9 +35,8 @@ export class NeighbourSpectra {
     const count = this.#gather(y, x);
     if (count === 0) return false;
     for (let k = 0; k < nk; k++) {
-      const found = this.#sort(count, k);
-      this.median[k] = middleOf(this.#sorted, found);
-      this.spread[k] = spreadOf(this.#sorted, found);
+      this.median[k] = middleOf(this.#sorted, this.#sort(count, k));
+      this.spread[k] = spreadOf(this.#sorted, this.#sortContrasts(count, k));
     }
     return true;
   }
@@ -50,16 +54,34 @@ export class NeighbourSpectra {
 
   /** Channel k of the neighbours in ascending order; how many have data. */
   #sort(count: number, k: number): number {
-    const sorted = this.#sorted;
     let found = 0;
     for (let n = 0; n < count; n++) {
-      const value = this.#slab.counts[this.#offsets[n] + k];
-      if (Number.isNaN(value)) continue;
-      let at = found++;
-      for (; at > 0 && sorted[at - 1] > value; at--) sorted[at] = sorted[at - 1];
-      sorted[at] = value;
+      found = this.#insert(this.#slab.counts[this.#offsets[n] + k], found);
     }
     return found;
+  }
+
+  /** The same of how far channel k stands out. */
+  #sortContrasts(count: number, k: number): number {
+    const { counts, shape } = this.#slab;
+    const left = Math.max(0, k - widestSpikeChannels);
+    const right = Math.min(shape.nk - 1, k + widestSpikeChannels);
+    let found = 0;
+    for (let n = 0; n < count; n++) {
+      const at = this.#offsets[n];
+      found = this.#insert(counts[at + k] - (counts[at + left] + counts[at + right]) / 2, found);
+    }
+    return found;
+  }
+
+  /** Puts a value in its place among those found so far; no data is passed over. */
+  #insert(value: number, found: number): number {
+    if (Number.isNaN(value)) return found;
+    const sorted = this.#sorted;
+    let at = found;
+    for (; at > 0 && sorted[at - 1] > value; at--) sorted[at] = sorted[at - 1];
+    sorted[at] = value;
+    return found + 1;
   }
 }
 

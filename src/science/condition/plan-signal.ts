@@ -225,14 +225,22 @@ export function planAlignRows(
     },
     apply: (slab, { y0, y1 }, state) => {
       const { shiftsPx } = stateOf(state, 'shifts').shifts;
-      return onlySlab(moveRows(rowsOf(slab, y0, y1), shiftsPx));
+      const rows = rowsOf(slab, y0, y1);
+      return onlySlab(liesWell(shiftsPx) ? rows : moveRows(rows, shiftsPx));
     },
     report: (_, state) => alignReport(stateOf(state, 'shifts').shifts, place),
   });
 }
 
+function liesWell(shiftsPx: Float64Array): boolean {
+  return shiftsPx.every((shift) => shift === 0);
+}
+
 function alignReport(shifts: RowShifts, place: StepPlace): ReturnType<PlannedStep['report']> {
   const { shiftsPx, serpentinePx, unsureRows, limitedRows } = shifts;
+  if (liesWell(shiftsPx)) {
+    return { place, line: 'rows lie well: none moved', warnings: [] };
+  }
   const most = shiftsPx.reduce((far, shift) => Math.max(far, Math.abs(shift)), 0);
   const warnings = [
     'Neighbouring pixels share their noise now: errors of fits after it are not independent.',

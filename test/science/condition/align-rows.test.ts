@@ -62,10 +62,10 @@ describe('row shifts', () => {
     const found = findRowShifts(
       spots((y) => (y === 20 ? 3 : 0)),
       { ny, nx },
-      2,
+      1.5,
       place,
     );
-    expect(Math.max(...found.shiftsPx)).toBe(2);
+    expect(Math.max(...found.shiftsPx)).toBe(1.5);
     expect(found.limitedRows).toBe(1);
   });
 

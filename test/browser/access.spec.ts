@@ -1,6 +1,8 @@
+import { readFileSync } from 'node:fs';
 import { AxeBuilder } from '@axe-core/playwright';
 import { expect, type Page, test } from '@playwright/test';
-import { openDemo } from './workbench-page';
+import { demoRecipe, replay } from './command-line';
+import { openDemo, valueShown } from './workbench-page';
 
 async function seriousFindings(page: Page): Promise<readonly string[]> {
   const { violations, passes } = await new AxeBuilder({ page }).analyze();
@@ -26,22 +28,75 @@ for (const theme of ['dark', 'light'] as const) {
   });
 }
 
-test('every key of the sheet that acts on the screen does', async ({ page }) => {
-  await openDemo(page);
-  const title = page.getByRole('application').first();
-  const names = new Set<string>();
-  for (let press = 0; press < 3; press++) {
-    names.add((await title.getAttribute('aria-label')) ?? '');
-    await page.keyboard.press(']');
-    await expect(title).not.toHaveAttribute('aria-label', [...names].at(-1) ?? '');
+/** Presses Tab until what has the focus bears this name. */
+async function tabTo(page: Page, name: RegExp): Promise<void> {
+  const focused = (): Promise<string> =>
+    page.evaluate(() => {
+      const element = document.activeElement;
+      return element?.getAttribute('aria-label') ?? element?.textContent ?? '';
+    });
+  for (let press = 0; press < 150; press++) {
+    await page.keyboard.press('Tab');
+    if (name.test(await focused())) return;
   }
-  expect(names.size).toBe(3);
+  throw new Error(`no ${name} within 150 presses of Tab`);
+}
+
+test('all of it goes by keys alone: point, pin, move a band, undo, save', async ({ page }) => {
+  await openDemo(page);
+  const map = 'band.tail.integral';
+  const original = replay(demoRecipe());
+  await tabTo(page, /^Sum of all channels/);
+  const heading = page.getByRole('heading', { name: /^Pixel/ });
+  await page.keyboard.press('ArrowRight');
+  const [x = 0, y = 0] = ((await heading.textContent()) ?? '').match(/\d+/g)?.map(Number) ?? [];
+  const pixel = { x, y };
+  await expect(valueShown(page, map)).toHaveText(original.shown(map, pixel, 'counts'));
+  await page.keyboard.press('Enter');
+  const pins = page.getByRole('region', { name: 'Pins' }).getByRole('listitem');
+  await expect(pins.last()).toContainText(`${x}, ${y}`);
+  await tabTo(page, /^Upper end of band tail$/);
+  for (let press = 0; press < 8; press++) await page.keyboard.press('ArrowRight');
+  const [download] = await Promise.all([
+    page.waitForEvent('download'),
+    page.keyboard.press('Control+s'),
+  ]);
+  const text = readFileSync(await download.path(), 'utf8');
+  const { bands, pins: saved } = JSON.parse(text);
+  expect(saved.at(-1)).toMatchObject(pixel);
+  expect(bands.find(({ name }: { name: string }) => name === 'tail').to).toBeGreaterThan(1.926);
+  const moved = replay(text);
+  expect(moved.value(map, pixel)).toBeGreaterThan(original.value(map, pixel));
+  await expect(valueShown(page, map)).toHaveText(moved.shown(map, pixel, 'counts'));
+  // Each press of an arrow is a step of its own; the pin was before them.
+  for (let press = 0; press < 8; press++) await page.keyboard.press('Control+z');
+  await expect(valueShown(page, map)).toHaveText(original.shown(map, pixel, 'counts'));
+  await expect(pins).toHaveCount(4);
+  await page.keyboard.press('Control+z');
+  await expect(pins).toHaveCount(3);
+});
+
+test('the sheet of keys tells the truth: lead map, counts on a logarithmic scale', async ({
+  page,
+}) => {
+  await openDemo(page);
+  const lead = page.getByRole('application').first();
+  const name = async (): Promise<string> => (await lead.getAttribute('aria-label')) ?? '';
+  const first = await name();
+  await page.keyboard.press(']');
+  await expect.poll(name).not.toBe(first);
   await page.keyboard.press('[');
+  await expect.poll(name).toBe(first);
+  const counts = (): Promise<readonly string[]> =>
+    page.getByTestId('spectrum-plot').locator('.ytick text').allTextContents();
+  await expect.poll(async () => (await counts()).length).toBeGreaterThan(2);
+  const even = await counts();
   await page.keyboard.press('l');
-  await page.keyboard.press('?');
-  await expect(page.getByRole('dialog').getByText('Undo')).toBeVisible();
-  await page.keyboard.press('Escape');
-  await expect(page.getByRole('dialog')).toHaveCount(0);
+  await expect.poll(counts).not.toEqual(even);
+  // Ticks of a logarithmic axis are powers of ten.
+  for (const text of await counts()) expect(text.replace(/[\s,.\u2009]/g, '')).toMatch(/^0*10*k?$/);
+  await page.keyboard.press('l');
+  await expect.poll(counts).toEqual(even);
 });
 
 test('the screen holds at 1024 × 768: nothing lies outside it', async ({ page }) => {

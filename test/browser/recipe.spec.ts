@@ -32,6 +32,25 @@ test('a reload brings the work back', async ({ page }) => {
   expect((await savedRecipe(page)).text).toBe(text);
 });
 
+test('a scan of the user’s own comes back after a reload, with what was done to it', async ({
+  page,
+}) => {
+  await page.getByTestId('file-input').setInputFiles('sample-data/twin-layer.h5');
+  await page.getByRole('dialog').getByRole('button', { name: 'Open' }).click();
+  await expect(scanLine(page)).toContainText('twin-layer.h5');
+  await expect(page.getByRole('button', { name: /^Map of band/ })).toHaveCount(3);
+  await dragBy(page, page.getByRole('slider', { name: 'Upper end of band high' }), -30);
+  const { text } = await savedRecipe(page);
+  const high = JSON.parse(text).bands.at(-1);
+  expect(high.name).toBe('high');
+  // The work is written down a moment after each edit.
+  await page.waitForTimeout(1000);
+  await page.reload();
+  await expect(scanLine(page)).toContainText('twin-layer.h5');
+  await expect(page.getByRole('button', { name: /^Map of band/ })).toHaveCount(3);
+  expect((await savedRecipe(page)).text).toBe(text);
+});
+
 test('a saved recipe opens again, as one step that can be undone', async ({ page }) => {
   await dragBy(page, page.getByRole('slider', { name: 'Upper end of band tail' }), 25);
   const moved = await savedRecipe(page);

@@ -7,13 +7,13 @@ import { despikeNeighbour } from './despike-neighbour';
 import { despikeSpectral } from './despike-spectral';
 import { counted, planOf, rowCounts } from './plan-base';
 import { type StepPlace, stepError } from './step-errors';
-import type { PlannedStep, RowSpan, StepReport, StepResult, Tally } from './step-plan';
+import type { PlannedStep, RowSpan, RowTally, StepReport, StepResult, Tally } from './step-plan';
 
 /** @throws RimlightError 'recipe' - for a threshold that is none, and neighbours in a scan of one pixel */
 export function planDespike(step: StepOf<'despike'>, grid: Grid, place: StepPlace): PlannedStep {
   assertThreshold(step.threshold, place);
   const { ny, nx } = grid.shape;
-  const report = (tally: Tally): StepReport => reportOf(place, tally, ny * nx * grid.shape.nk);
+  const report = (tally: Tally): StepReport => reportOf(place, tally, grid);
   if (step.method === 'spectral') {
     return planOf(place, grid, {
       apply: (slab, rows) => resultOf(despikeSpectral(rowsOf(slab, rows.y0, rows.y1), step)),
@@ -46,6 +46,7 @@ function resultOf({ slab, spikes, countMap }: Despiked): StepResult {
   return {
     slab,
     tally: {
+      ...channelsByRow(spikes, slab),
       spikes: spikesByRow(spikes, slab),
       channels: rowCounts(countMap, nx, (count) => count),
       pixels: rowCounts(countMap, nx, (count) => (count > 0 ? 1 : 0)),
@@ -65,19 +66,49 @@ function spikesByRow({ y, x, k }: SpikeList, slab: ConditionedSlab): Float64Arra
   return rows;
 }
 
+const channelKey = 'channel ';
+
+/** How often each channel was replaced, under "channel 208", for those that were. */
+function channelsByRow({ y, k }: SpikeList, slab: ConditionedSlab): RowTally {
+  const tally: Record<string, Float64Array> = {};
+  for (let i = 0; i < k.length; i++) {
+    tally[`${channelKey}${k[i]}`] ??= new Float64Array(slab.shape.ny);
+    tally[`${channelKey}${k[i]}`][y[i] - slab.y0]++;
+  }
+  return tally;
+}
+
+/** A channel hit in more than this share of the pixels was not hit: a line of the sample is there. */
+const mostOfChannel = 0.02;
+
+function lineWarnings(tally: Tally, { axis, shape }: Grid): readonly string[] {
+  const pixels = shape.ny * shape.nx;
+  let worst = { channel: -1, count: Math.max(5, mostOfChannel * pixels) };
+  for (const [name, count] of Object.entries(tally)) {
+    if (!name.startsWith(channelKey) || count <= worst.count) continue;
+    worst = { channel: Number(name.slice(channelKey.length)), count };
+  }
+  if (worst.channel < 0) return [];
+  return [
+    `At ${axis.centresEv[worst.channel].toFixed(4)} eV ${worst.count} of ${pixels} px were replaced: that is a narrow line of the sample, not cosmic rays. Compare with the neighbours instead.`,
+  ];
+}
+
 /** Cosmic rays light far less; more than this is the sample's, or a threshold too low. */
 const mostShare = 0.01;
 
-function reportOf(place: StepPlace, tally: Tally, values: number): StepReport {
+function reportOf(place: StepPlace, tally: Tally, grid: Grid): StepReport {
   const { spikes, pixels, channels } = tally;
+  const values = grid.shape.ny * grid.shape.nx * grid.shape.nk;
   const isMuch = channels > mostShare * values;
   return {
     place,
     line: spikes === 0 ? 'no spikes' : `${counted(spikes, 'spike')} in ${pixels} px`,
     warnings: isMuch
       ? [
+          ...lineWarnings(tally, grid),
           `${((100 * channels) / values).toFixed(1)} % of all channels were replaced, more than cosmic rays hit: raise the threshold, or compare with the neighbours.`,
         ]
-      : [],
+      : lineWarnings(tally, grid),
   };
 }

@@ -175,6 +175,15 @@ describe('a chain', () => {
     expect(outcome.steps[1].report.warnings.join(' ')).toMatch(/not independent/);
   });
 
+  it('tells a narrow line of the sample from cosmic rays by where it is', () => {
+    const withLine = counts.map((value, at) => value + (at % 48 === 10 ? 900 : 0));
+    const plan = planChain([steps.spectral], grid);
+    const rows = shareRows(plan, { y0: 0, y1: 11 });
+    const [step] = runChain(plan, [{ rows, slab: slabOf(withLine, shape) }]).steps;
+    expect(step.report.warnings.join(' ')).toMatch(/^At 1\.8100 eV 1\d\d of 132 px were replaced/);
+    expect(run([steps.spectral]).steps[0].report.warnings).toEqual([]);
+  });
+
   it('lists every spike, so that it can be given back', () => {
     const [step] = run([steps.neighbour], [0, 5, 11]).steps;
     const found = step.spikes.flatMap((list) =>

@@ -1,5 +1,4 @@
 import { describe, expect, it } from 'vitest';
-import type { RimlightError } from '../../../src/errors';
 import {
   type ChainOutcome,
   planChain,
@@ -7,76 +6,9 @@ import {
   shareRows,
 } from '../../../src/science/condition/chain';
 import type { ChainStep } from '../../../src/science/condition/chain-step';
-import { conditionedFrom, rowsOf } from '../../../src/science/condition/conditioned';
-import { createRandom } from '../../../src/science/numeric/random';
-import { gridOf, slabOf } from './made-conditioned';
-
-const shape = { ny: 11, nx: 12, nk: 48 };
-const grid = gridOf(shape);
-const counts = Float64Array.from({ length: 11 * 12 * 48 }, (_, at) => {
-  const k = at % 48;
-  const pixel = Math.floor(at / 48);
-  const y = Math.floor(pixel / 12);
-  const x = (pixel % 12) - (y % 2 === 1 ? 1 : 0);
-  const spot = Math.exp(-((y - 5) ** 2 + (x - 6) ** 2) / 12);
-  const mean = 40 + 0.5 * k + 300 * spot * Math.exp(-((k - 24 - 3 * spot) ** 2) / 20);
-  const random = createRandom(31, at);
-  return random.poisson(mean) + (at % 1999 === 7 ? 4000 : 0);
-});
-const recorded = slabOf(counts, shape);
-
-const spectrum = (mean: number, name: string) => ({
-  name,
-  shape: [48],
-  values: new Float64Array(48).fill(mean),
-  y0: 0,
-});
-const cube = {
-  name: 'out.npy',
-  shape: [11, 12, 48],
-  values: Float64Array.from(counts, (_, at) => createRandom(32, at).poisson(30)),
-  y0: 0,
-};
-const darkCube = { ...cube, name: 'dark.npy', values: cube.values.map((value) => value % 7) };
-
-const on = { isOff: false } as const;
-const steps = {
-  spectral: { ...on, step: 'despike', method: 'spectral', threshold: 6, kept: [] },
-  neighbour: { ...on, step: 'despike', method: 'neighbour', threshold: 6, kept: [] },
-  offset: { ...on, step: 'offset', dark: 20 },
-  dark: { ...on, step: 'offset', dark: darkCube },
-  response: {
-    ...on,
-    step: 'response',
-    curve: { name: 'qe.csv', unit: 'eV', medium: 'air', axis: [1.79, 1.85], response: [40, 5] },
-  },
-  calibrate: {
-    ...on,
-    step: 'calibrate',
-    points: [[680, 680.4]],
-    degree: 0,
-    unit: 'nm',
-    medium: 'air',
-  },
-  farfield: { ...on, step: 'farfield', outside: cube, scale: 'fit', window: [1.8, 1.81] },
-  byPixel: { ...on, step: 'farfield', outside: cube, scale: 'fit-pixels', window: [1.8, 1.81] },
-  baseline: { ...on, step: 'baseline', method: 'arpls', smoothness: 1e4, iterations: 20 },
-  denoise: { ...on, step: 'denoise', rank: 'auto' },
-  align: { ...on, step: 'align-rows', maxShiftPx: 2 },
-  crop: { ...on, step: 'crop', axisEv: [1.801, 1.84], x: [1, 11], y: [1, 9] },
-  bin: { ...on, step: 'bin', x: 2, y: 2, k: 2 },
-} as const satisfies Record<string, ChainStep>;
-
-/** The chain with rows shared out at these cuts. */
-function run(chain: readonly ChainStep[], cuts: readonly number[] = [0, 11]): ChainOutcome {
-  const plan = planChain(chain, grid);
-  const parts = cuts.slice(1).map((y1, i) => {
-    const rows = shareRows(plan, { y0: cuts[i], y1 });
-    const { y0, y1: end } = rows.needed[0];
-    return { rows, slab: rowsOf(recorded, y0, Math.max(y0, end)) };
-  });
-  return runChain(plan, parts);
-}
+import { conditionedFrom } from '../../../src/science/condition/conditioned';
+import { counts, grid, recorded, run, shape, spectrum, steps } from './made-chain';
+import { slabOf } from './made-conditioned';
 
 const joined = (outcome: ChainOutcome, of: 'counts' | 'variances'): number[] =>
   outcome.slabs.flatMap((slab) => [...(slab[of] ?? [])]);
@@ -256,50 +188,5 @@ describe('a chain', () => {
     const rows = shareRows(plan, { y0: 0, y1: 11 });
     const [out] = runChain(plan, [{ rows, slab: empty }]).slabs;
     expect(out.counts.every((value) => Number.isNaN(value))).toBe(true);
-  });
-});
-
-describe('a chain stops at the step that cannot be done, and names it', () => {
-  it.each<[string, readonly ChainStep[]]>([
-    ['condition[1], despike', [steps.offset, { ...steps.spectral, threshold: 0 }]],
-    [
-      'condition[0], offset',
-      [{ ...steps.offset, dark: { ...spectrum(1, 'dark.npy'), shape: [47] } }],
-    ],
-    [
-      'condition[1], response',
-      [steps.crop, { ...steps.response, curve: { ...steps.response.curve, axis: [2, 3] } }],
-    ],
-    ['condition[0], calibrate', [{ ...steps.calibrate, degree: 1 }]],
-    ['condition[0], farfield', [{ ...steps.farfield, window: null }]],
-    ['condition[0], farfield', [{ ...steps.farfield, scale: -1 }]],
-    ['condition[0], farfield', [{ ...steps.farfield, outside: { ...cube, shape: [12, 11, 48] } }]],
-    [
-      'condition[1], farfield',
-      [steps.dark, { ...steps.farfield, outside: spectrum(3, 'out.npy') }],
-    ],
-    ['condition[0], baseline', [{ ...steps.baseline, smoothness: 0 }]],
-    ['condition[1], crop', [steps.crop, steps.crop]],
-    ['condition[0], bin', [{ ...steps.bin, k: 48 }]],
-  ])('%s', (where, chain) => {
-    let caught: unknown = null;
-    try {
-      planChain(chain, grid);
-    } catch (error) {
-      caught = error;
-    }
-    expect((caught as RimlightError).kind).toBe('recipe');
-    expect((caught as RimlightError).where).toBe(where);
-  });
-
-  it.each<[string, readonly ChainStep[]]>([
-    ['condition[1], denoise', [steps.offset, { ...steps.denoise, rank: 49 }]],
-    ['condition[0], align-rows', [{ ...steps.align, maxShiftPx: 4 }]],
-    [
-      'condition[1], farfield',
-      [steps.offset, { ...steps.farfield, outside: spectrum(20, 'out.npy') }],
-    ],
-  ])('%s, once its data are known', (where, chain) => {
-    expect(() => run(chain)).toThrow(where);
   });
 });

@@ -2,6 +2,7 @@ import { expect, test } from '@playwright/test';
 import { demoRecipe } from './command-line';
 import {
   dragBy,
+  keptForNextVisit,
   leadMap,
   openDemo,
   pointAt,
@@ -23,8 +24,7 @@ test('a reload brings the work back', async ({ page }) => {
   await pointAt(page, leadMap(page), { x: 30, y: 30 });
   const shown = (await valueShown(page, 'band.tail.integral').textContent()) ?? '';
   const { text } = await savedRecipe(page);
-  // The work is written down a moment after each edit.
-  await page.waitForTimeout(1000);
+  await keptForNextVisit(page, text);
   await page.reload();
   await expect(scanLine(page)).toContainText('tent-field.h5');
   await pointAt(page, leadMap(page), { x: 30, y: 30 });
@@ -43,8 +43,7 @@ test('a scan of the user’s own comes back after a reload, with what was done t
   const { text } = await savedRecipe(page);
   const high = JSON.parse(text).bands.at(-1);
   expect(high.name).toBe('high');
-  // The work is written down a moment after each edit.
-  await page.waitForTimeout(1000);
+  await keptForNextVisit(page, text);
   await page.reload();
   await expect(scanLine(page)).toContainText('twin-layer.h5');
   await expect(page.getByRole('button', { name: /^Map of band/ })).toHaveCount(3);

@@ -107,3 +107,24 @@ export async function savedRecipe(page: Page): Promise<{ name: string; text: str
   for await (const chunk of stream) chunks.push(Buffer.from(chunk));
   return { name: download.suggestedFilename(), text: Buffer.concat(chunks).toString('utf8') };
 }
+
+/** Waits until the browser keeps this recipe for the next visit. */
+export async function keptForNextVisit(page: Page, recipeText: string): Promise<void> {
+  const kept = (): Promise<string | undefined> =>
+    page.evaluate(
+      () =>
+        new Promise<string | undefined>((resolve, reject) => {
+          const opening = indexedDB.open('keyval-store');
+          opening.onerror = () => reject(opening.error);
+          opening.onsuccess = () => {
+            const reading = opening.result
+              .transaction('keyval')
+              .objectStore('keyval')
+              .get('last-work');
+            reading.onerror = () => reject(reading.error);
+            reading.onsuccess = () => resolve(reading.result?.recipeText);
+          };
+        }),
+    );
+  await expect.poll(kept).toBe(recipeText);
+}

@@ -1,16 +1,34 @@
 import { describe, expect, it } from 'vitest';
 import { emptyRecipe } from '../../src/recipe/defaults';
-import { loadLastWork, loadRecipeFor, startAutosave } from '../../src/state/autosave';
+import { serialiseRecipe } from '../../src/recipe/serialise';
+import {
+  loadLastWork,
+  loadRecipeFor,
+  startAutosave,
+  type WorkStorage,
+} from '../../src/state/autosave';
 import { moveBandEnds } from '../../src/state/band-actions';
 import { offerEarlierRecipe } from '../../src/state/earlier-recipe';
 import { openLastWork } from '../../src/state/last-work';
-import { createWorkbench } from '../../src/state/workbench';
+import { createWorkbench, type Workbench } from '../../src/state/workbench';
 import { createInProcessEngine } from '../../workers/in-process-engine';
 import { makeScan } from '../workers/made-scan';
 import { memoryStorage, openWorkbench, pause, twoBands } from './open-workbench';
 
 const now = () => new Date('2026-05-04T10:00:00Z');
-const written = () => pause(400);
+
+/** Waits until the work on screen, its hash known, is what the storage holds. */
+async function written({ session, recipe }: Workbench, storage: WorkStorage): Promise<void> {
+  const isThere = async (): Promise<boolean> => {
+    const last = await loadLastWork(storage);
+    const { sha256 } = session.getState();
+    const isSameRecipe = last?.work.recipeText === serialiseRecipe(recipe.getState().recipe);
+    return isSameRecipe && sha256 !== null && last.work.sha256 === sha256;
+  };
+  while (!(await isThere())) await pause();
+  // The recipe under its scan's hash is written right after.
+  await pause(0);
+}
 
 describe('the work of a visit', () => {
   it('is written down after an edit, with the name and hash of its scan', async () => {
@@ -18,7 +36,7 @@ describe('the work of a visit', () => {
     const { workbench } = await openWorkbench();
     startAutosave(workbench, storage, now);
     moveBandEnds(workbench, { name: 'low' }, { fromEv: 1.83, toEv: 1.87 });
-    await written();
+    await written(workbench, storage);
     const last = await loadLastWork(storage);
     expect(last?.work).toMatchObject({ scanName: 'made.npz', savedAt: '2026-05-04T10:00:00.000Z' });
     expect(last?.work.sha256).toMatch(/^[0-9a-f]{64}$/);
@@ -43,7 +61,7 @@ describe('the work of a visit', () => {
     const { inputs } = makeScan();
     await openLastWork(first, inputs, twoBands);
     moveBandEnds(first, { name: 'low' }, { fromEv: 1.83, toEv: 1.87 });
-    await written();
+    await written(first, storage);
     while (!first.results.getState().maps.has('band.low.integral')) await pause();
     const last = await loadLastWork(storage);
     if (last === null || last.inputs === null) throw new Error('the file was not kept');
@@ -62,7 +80,7 @@ describe('the work of a visit', () => {
     const { workbench, made } = await openWorkbench();
     startAutosave(workbench, storage, now);
     await openLastWork(workbench, made.inputs, twoBands);
-    await written();
+    await written(workbench, storage);
     expect((await loadLastWork(storage))?.inputs?.scan.name).toBe('made.npz');
     const other = { ...made.inputs, scan: { ...made.inputs.scan, name: 'other.npz' } };
     await storage.set('last-inputs', other);
@@ -76,7 +94,7 @@ describe('the work of a visit', () => {
     const { workbench } = await openWorkbench();
     startAutosave(workbench, storage, now);
     moveBandEnds(workbench, { name: 'low' }, { fromEv: 1.83, toEv: 1.87 });
-    await written();
+    await written(workbench, storage);
     const last = await loadLastWork(storage);
     expect(last?.work.url).toBe('/sample-data/made.npz');
     expect(last?.inputs).toBeNull();
@@ -102,16 +120,20 @@ describe('the work of a visit', () => {
 
   it('is told once where the browser keeps nothing', async () => {
     const { workbench } = await openWorkbench();
+    let tries = 0;
     const refusing = {
       get: async () => undefined,
       set: async () => {
+        tries++;
         throw new Error('quota');
       },
     };
     startAutosave(workbench, refusing, now);
     for (const toEv of [1.87, 1.86]) {
+      const before = tries;
       moveBandEnds(workbench, { name: 'low' }, { fromEv: 1.83, toEv });
-      await written();
+      while (tries === before) await pause();
+      await pause(0);
     }
     expect(workbench.notices.getState().notices.map(({ text }) => text)).toEqual([
       'This browser does not keep the work for the next visit.',
@@ -125,7 +147,7 @@ describe('the recipe kept under a scan’s hash', () => {
     const first = await openWorkbench();
     startAutosave(first.workbench, storage, now);
     moveBandEnds(first.workbench, { name: 'low' }, { fromEv: 1.83, toEv: 1.87 });
-    await written();
+    await written(first.workbench, storage);
     const { sha256 } = first.workbench.session.getState();
     const edited = first.workbench.recipe.getState().recipe;
 
@@ -134,7 +156,7 @@ describe('the recipe kept under a scan’s hash', () => {
     startAutosave(second, storage, now);
     await openLastWork(second, first.made.inputs, twoBands);
     while (second.session.getState().sha256 === null) await pause();
-    await written();
+    await written(second, storage);
     expect((await loadRecipeFor(storage, sha256 ?? ''))?.recipe).toEqual(edited);
     const [notice] = second.notices.getState().notices;
     expect(notice?.text).toBe('made.npz was open before.');
@@ -149,7 +171,7 @@ describe('the recipe kept under a scan’s hash', () => {
     const first = await openWorkbench();
     startAutosave(first.workbench, storage, now);
     moveBandEnds(first.workbench, { name: 'low' }, { fromEv: 1.83, toEv: 1.87 });
-    await written();
+    await written(first.workbench, storage);
     const second = createWorkbench(createInProcessEngine());
     offerEarlierRecipe(second, storage);
     await openLastWork(second, first.made.inputs, twoBands);

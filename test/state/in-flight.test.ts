@@ -6,27 +6,26 @@ import { deleteBand, moveBandEnds, setBandName } from '../../src/state/band-acti
 import { showLeadMap } from '../../src/state/lead-actions';
 import { openOffered, openScan } from '../../src/state/scan-opening';
 import { makeScan } from '../workers/made-scan';
-import { openWorkbench, pause } from './open-workbench';
+import { openWorkbench } from './open-workbench';
 
-const late = () => pause(150);
 const moved = { fromEv: 1.83, toEv: 1.89 };
 
 describe('maps that answer late', () => {
   it('do not undo an undo made while they were computed', async () => {
-    const { workbench } = await openWorkbench();
+    const { workbench, answered } = await openWorkbench();
     const before = workbench.results.getState().maps.get('band.low.integral');
     moveBandEnds(workbench, { name: 'low' }, moved);
     workbench.recipe.undo();
-    await late();
+    await answered();
     expect(workbench.results.getState().maps.get('band.low.integral')).toBe(before);
     expect([...workbench.results.getState().pending]).toEqual([]);
   });
 
   it('do not bring back a band deleted while they were computed', async () => {
-    const { workbench } = await openWorkbench();
+    const { workbench, answered } = await openWorkbench();
     moveBandEnds(workbench, { name: 'low' }, moved);
     deleteBand(workbench, 'low');
-    await late();
+    await answered();
     const names = [...workbench.results.getState().maps.keys()];
     expect(names.filter((name) => name.startsWith('band.low.'))).toEqual([]);
     expect(names).toContain('band.high.integral');
@@ -34,10 +33,10 @@ describe('maps that answer late', () => {
   });
 
   it('do not stay under a name the band no longer has', async () => {
-    const { workbench } = await openWorkbench();
+    const { workbench, answered } = await openWorkbench();
     moveBandEnds(workbench, { name: 'low' }, moved);
     setBandName(workbench, 'low', 'tail');
-    await late();
+    await answered();
     const names = [...workbench.results.getState().maps.keys()];
     expect(names.filter((name) => name.startsWith('band.low.'))).toEqual([]);
     expect(names).toContain('band.tail.integral');
@@ -55,7 +54,7 @@ describe('maps that answer late', () => {
   });
 
   it('are behind the recipe until the newest are there', async () => {
-    const { workbench } = await openWorkbench();
+    const { workbench, answered } = await openWorkbench();
     const first = { fromEv: 1.825, toEv: 1.885 };
     moveBandEnds(workbench, { name: 'low' }, first);
     moveBandEnds(workbench, { name: 'low' }, moved);
@@ -67,7 +66,7 @@ describe('maps that answer late', () => {
         seen.push(now.pending.has('low'));
       }
     });
-    await late();
+    await answered();
     expect(seen).toEqual([true, true]);
     expect(workbench.results.getState().pending.size).toBe(0);
   });
@@ -75,20 +74,20 @@ describe('maps that answer late', () => {
 
 describe('a spectrum that answers late', () => {
   it('is not drawn once the cursor has left', async () => {
-    const { workbench } = await openWorkbench();
+    const { workbench, answered } = await openWorkbench();
     workbench.crosshair.set({ y: 1, x: 1 });
     workbench.crosshair.set(null);
-    await late();
+    await answered();
     expect(workbench.spectra.getState().hovered).toBeNull();
   });
 });
 
 describe('a failing engine', () => {
   it('leaves no map of a band whose ends it could not compute, and says so once', async () => {
-    const { workbench, breakBands } = await openWorkbench();
+    const { workbench, answered, breakBands } = await openWorkbench();
     breakBands('the numbers ran out');
     moveBandEnds(workbench, { name: 'low' }, moved);
-    await late();
+    await answered();
     const names = [...workbench.results.getState().maps.keys()];
     expect(names.filter((name) => name.startsWith('band.low.'))).toEqual([]);
     expect(names).toContain('band.high.integral');
@@ -100,13 +99,13 @@ describe('a failing engine', () => {
 
 describe('reading a scan again', () => {
   it('that fails leaves the recipe saying how the scan on screen is read', async () => {
-    const { workbench } = await openWorkbench();
+    const { workbench, answered } = await openWorkbench();
     const { scan } = workbench.recipe.getState().recipe;
     const current = workbench.session.getState().scan;
     workbench.recipe.edit('Correct', (recipe) =>
       setScanChoices(recipe, { ...recipe.scan, data: 'no-such-array' }),
     );
-    await late();
+    await answered();
     expect(workbench.session.getState().scan).toBe(current);
     expect(workbench.recipe.getState().recipe.scan).toEqual(scan);
     expect(workbench.notices.getState().notices).toHaveLength(1);
@@ -114,7 +113,7 @@ describe('reading a scan again', () => {
   });
 
   it('that is stopped does too, without a word', async () => {
-    const { workbench } = await openWorkbench();
+    const { workbench, answered } = await openWorkbench();
     const { scan } = workbench.recipe.getState().recipe;
     const current = workbench.session.getState().scan;
     const stopOnce = workbench.session.subscribe(({ running }) => {
@@ -125,7 +124,7 @@ describe('reading a scan again', () => {
     workbench.recipe.edit('Correct', (recipe) =>
       setScanChoices(recipe, { ...recipe.scan, exposure_s: 7 }),
     );
-    await late();
+    await answered();
     expect(workbench.session.getState().scan).toBe(current);
     expect(workbench.recipe.getState().recipe.scan).toEqual(scan);
     expect(workbench.notices.getState().notices).toEqual([]);
@@ -134,7 +133,7 @@ describe('reading a scan again', () => {
 
 describe('two scans opened in a row', () => {
   it('leave the later one on screen, its progress never taken away by the earlier', async () => {
-    const { workbench, made } = await openWorkbench();
+    const { workbench, made, answered } = await openWorkbench();
     const { scan } = workbench.session.getState();
     if (scan === null) throw new Error('no scan');
     const { plan } = scan.open;
@@ -150,7 +149,7 @@ describe('two scans opened in a row', () => {
     workbench.session.subscribe(({ running }) => labels.push(running?.label ?? null));
     expect(await first).toBe(false);
     expect(await second).toBe(true);
-    await late();
+    await answered();
     expect(workbench.session.getState().scan?.inputs.scan.name).toBe('second.npz');
     const untilDone = labels.slice(0, labels.indexOf(null));
     expect(untilDone.length).toBeGreaterThan(0);

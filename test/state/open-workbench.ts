@@ -2,7 +2,7 @@
 import type { Recipe } from '../../src/recipe/schema';
 import { openOffered } from '../../src/state/scan-opening';
 import { createWorkbench, type Workbench } from '../../src/state/workbench';
-import type { BandRequest, ScanEngine } from '../../workers/engine';
+import type { BandRequest, OpenScan, ScanEngine } from '../../workers/engine';
 import { createInProcessEngine } from '../../workers/in-process-engine';
 import { type MadeOptions, type MadeScan, makeScan } from '../workers/made-scan';
 
@@ -13,6 +13,8 @@ export interface OpenWorkbench {
   readonly asked: readonly BandRequest[];
   /** waits until no band map is behind the recipe */
   readonly settled: () => Promise<void>;
+  /** waits until the engine has answered all it was asked, wanted or not */
+  readonly answered: () => Promise<void>;
   /** from now on the engine fails to make band maps */
   readonly breakBands: (reason: string) => void;
 }
@@ -43,28 +45,51 @@ export async function openWorkbench(
   const breakBands = (reason: string): void => {
     broken = reason;
   };
-  const workbench = createWorkbench(listening(createInProcessEngine(), heard));
+  const answers: Promise<unknown>[] = [];
+  const engine = listening(createInProcessEngine(), heard, answers);
+  const workbench = createWorkbench(engine);
   await openOffered(workbench, made.inputs, recipe, '/sample-data/made.npz');
   const settled = async (): Promise<void> => {
     do await pause();
     while (workbench.results.getState().pending.size > 0);
   };
+  const answered = async (): Promise<void> => {
+    let waitedFor = -1;
+    while (waitedFor < answers.length) {
+      waitedFor = answers.length;
+      await Promise.allSettled(answers);
+      // What is done about an answer comes after it, and may ask again.
+      await pause(0);
+    }
+  };
   await settled();
-  return { workbench, made, asked, settled, breakBands };
+  return { workbench, made, asked, settled, answered, breakBands };
 }
 
-/** The engine with an ear at its band maps; bound, since its parts know only themselves. */
-function listening(engine: ScanEngine, heard: (request: BandRequest) => void): ScanEngine {
+/** The engine with an ear at its band maps, its answers kept; bound, since its parts know only themselves. */
+function listening(
+  engine: ScanEngine,
+  heard: (request: BandRequest) => void,
+  answers: Promise<unknown>[],
+): ScanEngine {
+  const kept = <T>(answer: Promise<T>): Promise<T> => {
+    answers.push(answer);
+    return answer;
+  };
+  const open: ScanEngine['open'] = async (inputs, plan, options) => {
+    const scan = await engine.open(inputs, plan, options);
+    const bandMaps: OpenScan['bandMaps'] = async (request, callOptions) => {
+      heard(request);
+      return scan.bandMaps(request, callOptions);
+    };
+    return bound(scan, {
+      bandMaps: (...asked) => kept(bandMaps(...asked)),
+      spectrum: (pixel) => kept(scan.spectrum(pixel)),
+    });
+  };
   return bound(engine, {
-    open: async (inputs, plan, options) => {
-      const scan = await engine.open(inputs, plan, options);
-      return bound(scan, {
-        bandMaps: async (request, callOptions) => {
-          heard(request);
-          return scan.bandMaps(request, callOptions);
-        },
-      });
-    },
+    open: (...asked) => kept(open(...asked)),
+    inspect: (...asked) => kept(engine.inspect(...asked)),
   });
 }
 

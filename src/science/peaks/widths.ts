@@ -4,6 +4,8 @@ import { pow } from '../numeric/elementary';
 
 /** Full width of a Gaussian over its standard deviation: 2√(2 ln 2). */
 export const fwhmPerSigma = 2.3548200450309493;
+/** Widths below this many eV, far below any channel, are taken as this one, so that 0 is a width too. */
+export const leastWidthEv = 1e-12;
 const sqrtTwoPi = 2.5066282746310002;
 
 /** Counts per eV at the centre of a Gaussian of unit area. */

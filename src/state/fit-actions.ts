@@ -30,8 +30,8 @@ const drawnEveryMs = 120;
 export async function runFit(workbench: Workbench): Promise<void> {
   const { session, recipe, results, fit, notices } = workbench;
   const { scan, scanNumber, running } = session.getState();
-  if (scan === null || fit.getState().isRunning) return;
-  running?.stop();
+  // A scan being read again is left to it: stopping that would take the recipe back.
+  if (scan === null || running !== null) return;
   const document = recipe.getState().recipe;
   const madeOf = fitKey(scanNumber, document);
   const before = fit.getState();

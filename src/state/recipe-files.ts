@@ -1,4 +1,6 @@
 /** The recipe as a file: saved by the user, opened again on the scan on screen. */
+import { setScanChoices } from '../recipe/edits';
+import { mergeScanChoices } from '../recipe/merge-scan-choices';
 import { formatProblem, recipeError } from '../recipe/problems';
 import type { Recipe } from '../recipe/schema';
 import { serialiseRecipe } from '../recipe/serialise';
@@ -55,8 +57,9 @@ export function openRecipe(workbench: Workbench, text: string, fileName: string)
     return;
   }
   const given = parsed.recipe;
-  recipe.edit(`Open ${fileName}`, (before) =>
-    given.scan === undefined && before.scan !== undefined ? { ...given, scan: before.scan } : given,
-  );
+  recipe.edit(`Open ${fileName}`, (before) => {
+    const scan = mergeScanChoices(before.scan ?? {}, given.scan ?? {});
+    return setScanChoices(given, scan);
+  });
   sayUndoable(workbench, `${fileName} is in use.`);
 }

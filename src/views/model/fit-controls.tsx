@@ -11,7 +11,7 @@ export function FitControls(): React.JSX.Element {
   const workbench = useWorkbench();
   const recipe = useRecipe((document) => document);
   const scanNumber = useSession((session) => session.scanNumber);
-  const hasScan = useSession((session) => session.scan !== null);
+  const isReady = useSession(({ scan, running }) => scan !== null && running === null);
   const status = useResults((results) => results.maps.get('fit.status') ?? null);
   const { madeOf, isRunning, scanFit } = useStore(workbench.fit);
   const words = useMemo(() => (status === null ? [] : statusesInWords(status.values)), [status]);
@@ -22,7 +22,7 @@ export function FitControls(): React.JSX.Element {
     <div className={styles.fit}>
       <Button
         className={styles.run ?? ''}
-        isDisabled={!hasScan || isRunning || isDone}
+        isDisabled={!isReady || isDone}
         onPress={() => void runFit(workbench)}
       >
         {isRunning

@@ -7,6 +7,7 @@
 import { sha256 } from '@noble/hashes/sha2.js';
 import { bytesToHex, utf8ToBytes } from '@noble/hashes/utils.js';
 import { assertUnreachable, RimlightError } from '../errors';
+import { canonicalJson } from './canonical-json';
 import { floorOf } from './defaults';
 import { type MapName, parseMapName } from './map-names';
 import type { ConditionStep, Recipe, RecipeBand } from './schema';
@@ -150,12 +151,4 @@ function filesIn(part: unknown): readonly string[] {
 
 function digest(value: unknown): string {
   return bytesToHex(sha256(utf8ToBytes(canonicalJson(value))));
-}
-
-/** JSON with fields in alphabetical order: equal values, equal text. */
-function canonicalJson(value: unknown): string {
-  if (Array.isArray(value)) return `[${value.map(canonicalJson).join(',')}]`;
-  if (!isRecord(value)) return JSON.stringify(value);
-  const fields = Object.keys(value).sort();
-  return `{${fields.map((key) => `${JSON.stringify(key)}:${canonicalJson(value[key])}`).join(',')}}`;
 }

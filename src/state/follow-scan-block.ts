@@ -3,6 +3,7 @@
  * changes how the file is to be read, the file is read again that way.
  */
 import { createLatestWins } from '../../workers/latest-wins';
+import { canonicalJson } from '../recipe/canonical-json';
 import type { Recipe } from '../recipe/schema';
 import { openScan } from './scan-opening';
 import type { Workbench } from './workbench';
@@ -64,7 +65,7 @@ export function followScanBlock(workbench: Workbench): () => void {
 }
 
 function textOf(choices: Recipe['scan']): string {
-  return JSON.stringify(choices ?? {});
+  return canonicalJson(choices ?? {});
 }
 
 function withScan(recipe: Recipe, scan: Recipe['scan']): Recipe {

@@ -27,6 +27,22 @@ describe('a recipe file', () => {
     expect(workbench.recipe.getState().recipe).toEqual({ recipe: 1, title: 'bare', scan });
   });
 
+  it('that says the same of the scan in other words does not have it read again', async () => {
+    const { workbench } = await openWorkbench();
+    const { scan } = workbench.recipe.getState().recipe;
+    const reversed = Object.fromEntries(Object.entries(scan ?? {}).reverse());
+    const { scanNumber } = workbench.session.getState();
+    openRecipe(
+      workbench,
+      JSON.stringify({ recipe: 1, scan: reversed, title: 'same' }),
+      'same.json',
+    );
+    await pause(100);
+    expect(workbench.recipe.getState().recipe.title).toBe('same');
+    expect(workbench.session.getState().running).toBeNull();
+    expect(workbench.session.getState().scanNumber).toBe(scanNumber);
+  });
+
   it('with a mistake is refused in one notice that names it, and nothing changes', async () => {
     const { workbench } = await openWorkbench();
     const before = workbench.recipe.getState().recipe;

@@ -13,6 +13,8 @@ export default defineConfig({
   retries: 0,
   forbidOnly: true,
   timeout: 60_000,
+  // What is waited for comes in its time, also on a machine with other work to do.
+  expect: { timeout: 15_000 },
   outputDir: 'test-results',
   use: {
     baseURL: address,

@@ -12,6 +12,11 @@ export function followFit(workbench: Workbench): () => void {
   const { session, recipe, crosshair, results, fit, notices } = workbench;
   const drawing = createLatestWins();
 
+  const isCurrent = (scanNumber: number): boolean => session.getState().scanNumber === scanNumber;
+  const sayOf = (scanNumber: number) => (error: unknown) => {
+    if (isCurrent(scanNumber)) notices.sayError(error);
+  };
+
   const update = (): void => {
     const { scan, scanNumber } = session.getState();
     const document = recipe.getState().recipe;
@@ -32,8 +37,11 @@ export function followFit(workbench: Workbench): () => void {
       const isOfThis = scanFit !== null && madeOf === fitKey(scanNumber, document);
       const from = isOfThis ? scanFit : undefined;
       const fitted = { pixel, fit: await scan.open.fitPixel(plan, pixel, from) };
-      if (session.getState().scanNumber === scanNumber) fit.setState({ fitted });
-    }, notices.sayError);
+      // Late answers: of a scan that is gone, or of a model that was taken away meanwhile.
+      if (isCurrent(scanNumber) && recipe.getState().recipe.model !== undefined) {
+        fit.setState({ fitted });
+      }
+    }, sayOf(scanNumber));
   };
 
   const dropStale = (): void => {

@@ -6,7 +6,7 @@ import { deleteBand, moveBandEnds, setBandName } from '../../src/state/band-acti
 import { showLeadMap } from '../../src/state/lead-actions';
 import { openOffered, openScan } from '../../src/state/scan-opening';
 import { makeScan } from '../workers/made-scan';
-import { openWorkbench } from './open-workbench';
+import { openWorkbench, twoBands } from './open-workbench';
 
 const moved = { fromEv: 1.83, toEv: 1.89 };
 
@@ -79,6 +79,31 @@ describe('a spectrum that answers late', () => {
     workbench.crosshair.set(null);
     await answered();
     expect(workbench.spectra.getState().hovered).toBeNull();
+  });
+});
+
+describe('a fit that answers late', () => {
+  const model = {
+    components: [
+      { name: 'floor', shape: 'flat' as const },
+      { name: 'peak', shape: 'gaussian' as const, centre: 1.9, fwhm: 0.03 },
+    ],
+  };
+
+  it('is drawn for the newest pixel', async () => {
+    const { workbench, answered } = await openWorkbench({ ...twoBands, model });
+    workbench.crosshair.set({ y: 1, x: 1 });
+    workbench.crosshair.set({ y: 2, x: 3 });
+    await answered();
+    expect(workbench.fit.getState().fitted?.pixel).toEqual({ y: 2, x: 3 });
+  });
+
+  it('is not drawn once its model is taken away', async () => {
+    const { workbench, answered } = await openWorkbench({ ...twoBands, model });
+    workbench.crosshair.set({ y: 1, x: 1 });
+    workbench.recipe.edit('Delete the model', ({ model: _, ...others }) => others);
+    await answered();
+    expect(workbench.fit.getState().fitted).toBeNull();
   });
 });
 

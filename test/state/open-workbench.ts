@@ -85,6 +85,7 @@ function listening(
     return bound(scan, {
       bandMaps: (...asked) => kept(bandMaps(...asked)),
       spectrum: (pixel) => kept(scan.spectrum(pixel)),
+      fitPixel: (...asked) => kept(scan.fitPixel(...asked)),
     });
   };
   return bound(engine, {

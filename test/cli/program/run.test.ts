@@ -18,6 +18,14 @@ const out = temporaryFolder();
 const folder = join(out, 'tent-field');
 const recipeText = await readFile(demoRecipe, 'utf8');
 const names = ['tail', 'shoulder', 'exciton', 'A1', '2LA'];
+const peakNames = ['area', 'centre', 'fwhm', 'height'];
+const fittedNames = [
+  ...['floor.level', 'floor.slope', 'localised.needed', 'A1.centre_cm1', '2LA.centre_cm1'],
+  ...['exciton', 'localised', 'A1', '2LA'].flatMap((peak) =>
+    peakNames.map((name) => `${peak}.${name}`),
+  ),
+  ...['chi2r', 'status', 'iterations'],
+];
 
 beforeAll(async () => {
   const ran = await rimlight(
@@ -32,10 +40,10 @@ beforeAll(async () => {
   );
   expect(ran).toEqual({
     code: 0,
-    out: `${demoScan}: 32 maps written to ${folder}\n`,
+    out: `${demoScan}: 56 maps written to ${folder}\n`,
     err: '',
   });
-});
+}, 60_000);
 
 async function recipe() {
   const result = parseRecipe(recipeText);
@@ -53,7 +61,9 @@ describe('the folder of a run', () => {
     );
     const files = await readdir(join(folder, 'maps'));
     const values = files.filter((file) => !file.endsWith('.err.npy'));
-    expect(values.sort()).toEqual([...bandFiles, 'scan.height.npy', 'scan.total.npy'].sort());
+    const fitFiles = fittedNames.map((name) => `fit.${name}.npy`);
+    const scanFiles = ['scan.height.npy', 'scan.total.npy'];
+    expect(values.sort()).toEqual([...bandFiles, ...fitFiles, ...scanFiles].sort());
     expect(files).toContain('band.tail.integral.err.npy');
     expect(files).toContain('scan.total.err.npy');
     expect(files).not.toContain('scan.height.err.npy');
@@ -152,7 +162,7 @@ describe('the folder of a run', () => {
       recipe: { file: 'tent-field.recipe.json', title: 'Tent field, first look' },
       workers: 2,
     });
-    expect(Object.keys(summary.timings_s)).toEqual(['read', 'maps', 'hash', 'write']);
+    expect(Object.keys(summary.timings_s)).toEqual(['read', 'maps', 'fit', 'hash', 'write']);
     expect(Array.isArray(summary.warnings)).toBe(true);
     const { values } = await readMap(folder, 'band.tail.integral');
     const sorted = [...values].sort((a, b) => a - b);

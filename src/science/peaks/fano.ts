@@ -5,16 +5,17 @@
  * Scaled by 1/(π fwhm/2 (q² + 1)), so that for large |q|, where the line is a Lorentzian, `area` is the
  * counts under it; in general these are area × (q² − 1)/(q² + 1).
  */
-import { atan2, log } from '../numeric/elementary';
+import { angleOf, logOfRatio } from './lorentzian-channel';
 import { area, centre, fwhm, plainParameter } from './peak-parameters';
 import type { Shape } from './shape';
+import { leastWidthEv } from './widths';
 
 export const fano: Shape = {
   name: 'fano',
   parameters: [area, centre, fwhm, plainParameter('q')],
   evaluate({ edgesEv, widthsEv }, values, counts, columns) {
     const [total, middle, width, q] = values;
-    const half = width / 2;
+    const half = Math.max(width, leastWidthEv) / 2;
     const { even, odd, evenByQ, oddByQ } = weightsOf(q);
     const count = widthsEv.length;
     for (let k = 0; k < count; k++) {
@@ -23,8 +24,8 @@ export const fano: Shape = {
       const step = high - low;
       const atLow = 1 + low * low;
       const atHigh = 1 + high * high;
-      const angle = atan2(step, 1 + low * high) / Math.PI;
-      const ratio = log(atHigh / atLow) / Math.PI;
+      const angle = angleOf(step, 1 + low * high) / Math.PI;
+      const ratio = logOfRatio(atLow, atHigh, step * (low + high)) / Math.PI;
       const share = even * angle + 0.5 * odd * ratio;
       counts[k] += total * share;
       if (columns === null) continue;

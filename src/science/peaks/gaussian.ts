@@ -3,7 +3,7 @@ import { exp } from '../numeric/elementary';
 import { erfc } from '../numeric/error-functions';
 import { area, centre, fwhm } from './peak-parameters';
 import { type Shape, spanWithin } from './shape';
-import { fwhmPerSigma } from './widths';
+import { fwhmPerSigma, leastWidthEv } from './widths';
 
 const sqrtTwoPi = 2.5066282746310002;
 const sqrtHalf = Math.SQRT1_2;
@@ -26,7 +26,7 @@ export const gaussian: Shape = {
   parameters: [area, centre, fwhm],
   evaluate(grid, values, counts, columns) {
     const [total, middle, width] = values;
-    const sigma = width / fwhmPerSigma;
+    const sigma = Math.max(width, leastWidthEv) / fwhmPerSigma;
     const reach = reachSigmas * sigma;
     const span = spanWithin(grid, middle - reach, middle + reach);
     const { centresEv, widthsEv, edgesEv } = grid;

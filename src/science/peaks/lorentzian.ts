@@ -1,7 +1,8 @@
 /** The Lorentzian peak, integrated over each channel in closed form; its wings are never cut. */
-import { atan2 } from '../numeric/elementary';
+import { angleOf } from './lorentzian-channel';
 import { area, centre, fwhm } from './peak-parameters';
 import type { Shape } from './shape';
+import { leastWidthEv } from './widths';
 
 /**
  * Area/π × [atan(b/γ) − atan(a/γ)] with a, b the channel's edges from the centre and γ half the full
@@ -12,13 +13,13 @@ export const lorentzian: Shape = {
   parameters: [area, centre, fwhm],
   evaluate({ edgesEv, widthsEv }, values, counts, columns) {
     const [total, middle, width] = values;
-    const half = width / 2;
+    const half = Math.max(width, leastWidthEv) / 2;
     const square = half * half;
     const count = widthsEv.length;
     for (let k = 0; k < count; k++) {
       const low = edgesEv[k] - middle;
       const high = edgesEv[k + 1] - middle;
-      const share = atan2(half * widthsEv[k], square + low * high) / Math.PI;
+      const share = angleOf(half * widthsEv[k], square + low * high) / Math.PI;
       counts[k] += total * share;
       if (columns === null) continue;
       const atLow = low * low + square;

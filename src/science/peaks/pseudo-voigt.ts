@@ -15,10 +15,10 @@ export const pseudoVoigt: Shape = {
     one[0] = 1;
     one[1] = middle;
     one[2] = width;
-    alone.gaussian.fill(0);
-    alone.lorentzian.fill(0);
-    // The Gaussian leaves what is beyond its reach untouched.
-    for (const column of alone.ofGaussian) column.fill(0);
+    // The shapes add counts, and the Gaussian leaves what is beyond its reach untouched.
+    alone.gaussian.fill(0, 0, count);
+    alone.lorentzian.fill(0, 0, count);
+    for (const column of alone.ofGaussian) column.fill(0, 0, count);
     const isAsked = columns !== null;
     gaussian.evaluate(grid, one, alone.gaussian, isAsked ? alone.ofGaussian : null);
     lorentzian.evaluate(grid, one, alone.lorentzian, isAsked ? alone.ofLorentzian : null);
@@ -49,9 +49,9 @@ interface Scratch {
 
 let kept: Scratch | null = null;
 
-/** Room for the two parts, made once for each length of the window. */
+/** Room for the two parts, made anew only for a longer window. */
 function scratch(count: number): Scratch {
-  if (kept === null || kept.gaussian.length !== count) {
+  if (kept === null || kept.gaussian.length < count) {
     kept = {
       values: new Float64Array(3),
       gaussian: new Float64Array(count),

@@ -13,7 +13,8 @@ const quickModel = {
   ],
 };
 
-async function useModel(page: Page, model: object): Promise<string> {
+/** Without one, the recipe has no model. */
+async function useModel(page: Page, model?: object): Promise<string> {
   const text = JSON.stringify({ ...JSON.parse(demoRecipe()), model });
   const file = { name: 'model.json', mimeType: 'application/json', buffer: Buffer.from(text) };
   await page.getByTestId('file-input').setInputFiles(file);
@@ -68,7 +69,7 @@ test('a fit that is stopped keeps what is done, and goes on from there', async (
 });
 
 test('a peak is added by a click, moved by its handle, and undone', async ({ page }) => {
-  await page.getByRole('button', { name: 'Settings of the peak model' }).click();
+  await useModel(page);
   await page.getByRole('button', { name: 'Add peak' }).click();
   const ground = page.getByTestId('band-ground');
   await ground.click({ position: { x: 60, y: 60 } });
@@ -84,7 +85,7 @@ test('a peak is added by a click, moved by its handle, and undone', async ({ pag
 });
 
 test('a model is suggested from the scan, with the exciton where it is', async ({ page }) => {
-  await page.getByRole('button', { name: 'Settings of the peak model' }).click();
+  await useModel(page);
   await page.getByRole('button', { name: 'Suggest' }).click();
   await expect(page.getByRole('slider', { name: /^Centre of exciton/ })).toBeVisible();
   const { components } = JSON.parse((await savedRecipe(page)).text).model;

@@ -1,5 +1,6 @@
 /** Fits every pixel with the recipe's model, maps filling in as pixels are done. */
 import { mediumOf } from '../recipe/defaults';
+import { offeredMaps } from '../recipe/offered-maps';
 import { planFit } from '../recipe/plan-fit';
 import type { Recipe } from '../recipe/schema';
 import type { FitPlan } from '../science/fit/fit-plan';
@@ -28,7 +29,7 @@ const drawnEveryMs = 120;
 
 /** Fits all pixels; what is done stays when it is stopped, and the next call goes on from there. */
 export async function runFit(workbench: Workbench): Promise<void> {
-  const { session, recipe, results, fit, notices } = workbench;
+  const { session, recipe, fit, notices } = workbench;
   const { scan, scanNumber, running } = session.getState();
   // A scan being read again is left to it: stopping that would take the recipe back.
   if (scan === null || running !== null) return;
@@ -39,12 +40,11 @@ export async function runFit(workbench: Workbench): Promise<void> {
   const previous = isSame ? { previous: before.scanFit } : {};
   const stopper = new AbortController();
   const startedMs = performance.now();
+  const stop = (): void => stopper.abort();
   const isCurrent = (): boolean => session.getState().scanNumber === scanNumber;
   const report = (share: number): void => {
     if (stopper.signal.aborted || !isCurrent()) return;
-    session.setState({
-      running: { label: 'Fitting', share, startedMs, stop: () => stopper.abort() },
-    });
+    session.setState({ running: { label: 'Fitting', share, startedMs, stop } });
   };
   let drawnAtMs = 0;
   try {
@@ -58,22 +58,25 @@ export async function runFit(workbench: Workbench): Promise<void> {
       onMaps: (maps) => {
         if (!isCurrent() || performance.now() - drawnAtMs < drawnEveryMs) return;
         drawnAtMs = performance.now();
-        results.put(asNew(maps));
+        putFitMaps(workbench, maps);
       },
       ...previous,
     });
     if (!isCurrent()) return;
-    results.put(asNew(scanFit.maps));
+    putFitMaps(workbench, scanFit.maps);
     fit.setState({ madeOf, scanFit });
   } catch (error) {
     notices.sayError(error);
   } finally {
     fit.setState({ isRunning: false });
-    if (isCurrent()) session.setState({ running: null });
+    // A scan may be opening by now; its progress is not the fit's to end.
+    if (session.getState().running?.stop === stop) session.setState({ running: null });
   }
 }
 
-/** The arrays are the same and fuller than before; a map of its own identity is drawn anew. */
-function asNew(maps: readonly DerivedMap[]): readonly DerivedMap[] {
-  return maps.map((map) => ({ ...map }));
+/** Shows the maps of a fit, but those of components the recipe no longer has: the model may have changed while it ran. */
+export function putFitMaps({ recipe, results }: Workbench, maps: readonly DerivedMap[]): void {
+  const offered = new Set(offeredMaps(recipe.getState().recipe).map(({ name }) => name));
+  // The arrays are the same and fuller than before; a map of its own identity is drawn anew.
+  results.put(maps.filter(({ name }) => offered.has(name)).map((map) => ({ ...map })));
 }

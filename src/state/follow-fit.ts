@@ -1,11 +1,11 @@
 /**
- * Keeps the drawn fit in step with the crosshair and the model, and takes away maps of components
- * that are gone. The maps of all pixels are made only when the user asks.
+ * Keeps the drawn fit in step with the crosshair and the model, takes away maps of components that
+ * are gone and brings them back with their model. Maps of all pixels are made only when the user asks.
  */
 import { createLatestWins } from '../../workers/latest-wins';
 import { parseMapName } from '../recipe/map-names';
 import { offeredMaps } from '../recipe/offered-maps';
-import { fitKey, planOf } from './fit-actions';
+import { fitKey, planOf, putFitMaps } from './fit-actions';
 import type { Workbench } from './workbench';
 
 export function followFit(workbench: Workbench): () => void {
@@ -52,10 +52,22 @@ export function followFit(workbench: Workbench): () => void {
     });
   };
 
+  /** Undo comes back to the model that was fitted: its maps need no second fit. */
+  const bringBack = (): void => {
+    const { madeOf, scanFit } = fit.getState();
+    const { scanNumber } = session.getState();
+    if (scanFit !== null && madeOf === fitKey(scanNumber, recipe.getState().recipe)) {
+      putFitMaps(workbench, scanFit.maps);
+    }
+  };
+
   const unsubscribers = [
     crosshair.subscribe(update),
     recipe.subscribe((now, before) => {
-      if (now.recipe.model !== before.recipe.model) dropStale();
+      if (now.recipe.model !== before.recipe.model) {
+        dropStale();
+        bringBack();
+      }
       if (now.recipe.model !== before.recipe.model || now.recipe.pins !== before.recipe.pins) {
         update();
       }

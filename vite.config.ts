@@ -1,5 +1,6 @@
 /// <reference types="vitest/config" />
-import { existsSync, mkdirSync, statSync, writeFileSync } from 'node:fs';
+import { existsSync, mkdirSync, readdirSync, readFileSync, statSync, writeFileSync } from 'node:fs';
+import { resolve as resolvePath } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import react from '@vitejs/plugin-react';
 import { defineConfig, type Plugin, runnerImport } from 'vite';
@@ -42,6 +43,41 @@ const resolve = {
   alias: { 'h5wasm/factory': fromRoot('node_modules/h5wasm/dist/esm/hdf5_util.js') },
 };
 
+/**
+ * The fit's kernel, compiled from AssemblyScript when it is first asked for; as text inside the program, since a worker may
+ * fetch nothing while it starts.
+ */
+function fitKernel(): Plugin {
+  const name = './assembly/shapes?compiled';
+  const own = '\0fit-kernel';
+  const folder = fromRoot('workers/kernel/assembly');
+  return {
+    name: 'fit-kernel',
+    enforce: 'pre',
+    resolveId: (id) => (id === name ? own : null),
+    async load(id) {
+      if (id !== own) return null;
+      for (const file of readdirSync(folder)) this.addWatchFile(resolvePath(folder, file));
+      const { main } = await import('assemblyscript/asc');
+      let binary: Uint8Array | null = null;
+      const { error, stderr } = await main(
+        ['--config', fromRoot('asconfig.json'), '--outFile', 'fit-kernel.wasm'],
+        {
+          readFile: (path, base) => {
+            const file = resolvePath(base, path);
+            return existsSync(file) ? readFileSync(file, 'utf8') : null;
+          },
+          writeFile: (_, content) => {
+            if (typeof content !== 'string') binary = content;
+          },
+        },
+      );
+      if (error !== null || binary === null) throw new Error(`the fit's kernel: ${stderr}`);
+      return `export const encodedKernel = '${Buffer.from(binary).toString('base64')}';`;
+    },
+  };
+}
+
 /** What the page of `npm run dev` opens at once, as `rimlight serve` tells it. */
 function demoOffer(): Plugin {
   return {
@@ -67,6 +103,7 @@ export default defineConfig(({ mode }) => {
   if (mode === 'cli' || mode === 'bench') {
     return {
       resolve,
+      plugins: [fitKernel()],
       publicDir: false,
       build: {
         ssr: true,
@@ -89,9 +126,9 @@ export default defineConfig(({ mode }) => {
     resolve,
     // The plotting library speaks of Node's name for the global object.
     define: { global: 'globalThis' },
-    plugins: [react(), recipeSchemaFile(), demoOffer()],
+    plugins: [react(), fitKernel(), recipeSchemaFile(), demoOffer()],
     base: './',
-    worker: { format: 'es' as const },
+    worker: { format: 'es' as const, plugins: () => [fitKernel()] },
     server: { headers: isolation },
     build: {
       outDir: 'dist/app',

@@ -13,6 +13,7 @@ import { qualityAt } from '../src/science/fit/fit-record';
 import { noSeeds, PixelFitter, type Seeds } from '../src/science/fit/pixel-fitter';
 import type { EnergyAxis } from '../src/science/scan';
 import type { FitKnown, FitTile, RowRange } from './engine';
+import { createFitKernel } from './kernel/fit-kernel';
 import { nextTurn } from './turn';
 
 /** Pixels of a tile, about 20 ms of work. */
@@ -38,7 +39,7 @@ export class SlabFit {
   constructor(slab: SlabToFit, plan: FitPlan) {
     this.#slab = slab;
     this.#plan = plan;
-    this.#fitter = new PixelFitter(createFitModel(plan, slab.axis));
+    this.#fitter = new PixelFitter(createFitModel(plan, slab.axis), createFitKernel);
     this.#spectrum = new Float64Array(slab.tiled.nk);
   }
 

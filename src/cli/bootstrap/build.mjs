@@ -23,7 +23,7 @@ const inProject = (...parts) => join(projectFolder, ...parts);
 /** What the build is made from. */
 const sources = [
   ...['src', 'workers', 'public', 'sample-data'],
-  ...['index.html', 'vite.config.ts', 'package.json', 'package-lock.json'],
+  ...['index.html', 'vite.config.ts', 'asconfig.json', 'package.json', 'package-lock.json'],
 ];
 /** Written last; its time is the start of the build, so that an edit made meanwhile counts as newer. */
 const stamp = inProject('dist', 'built');

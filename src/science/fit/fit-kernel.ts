@@ -1,12 +1,21 @@
 /**
- * The part of a fit that touches every channel: weights, likelihood and normal equations. Here the
- * plain kernel; the one in WebAssembly has the same bits.
- *
- * Sums run in the order of `dot`, which the other kernel keeps.
+ * The part of a fit that touches every channel: shapes, weights, likelihood and normal equations. Here
+ * the plain kernel; the one in WebAssembly (`workers/kernel`) has the same bits. Sums over channels run
+ * in chains, even and odd channels apart, as vectors add.
  */
 import { log } from '../numeric/elementary';
-import type { ChannelSpan } from '../peaks/shape';
+import type { ChannelSpan, FitGrid } from '../peaks/shape';
 import type { FitNoise } from './fit-plan';
+import { logarithm } from './kernel-elementary';
+import type { ShapeHost, ShapeLoops } from './kernel-evaluate';
+import {
+  addDecay,
+  addGaussian,
+  addLorentzian,
+  addPolynomial,
+  type KernelGrid,
+  kernelGrid,
+} from './kernel-shapes';
 
 /** Expected counts below this many (in units of the variance's slope) weigh as if they were so many. */
 export const leastExpected = 1e-4;
@@ -46,7 +55,7 @@ export interface KernelSums {
 }
 
 /** Owner of the arrays of one fit at a time. */
-export interface FitKernel {
+export interface FitKernel extends ShapeHost {
   readonly kind: 'plain' | 'vectors';
   /** (n) counts as given, NaN where there is no data */
   readonly counts: Float64Array;
@@ -78,15 +87,18 @@ export interface FitKernel {
 }
 
 /**
- * @param channels - of the fit's window
+ * @param grid - channels of the fit's window
  * @param parameters - columns there is room for
  */
-export function createPlainFitKernel(channels: number, parameters: number): FitKernel {
-  return new PlainFitKernel(channels, parameters);
-}
+export type CreateFitKernel = (grid: FitGrid, parameters: number) => FitKernel;
+
+export const createPlainFitKernel: CreateFitKernel = (grid, parameters) =>
+  new PlainFitKernel(grid, parameters);
 
 class PlainFitKernel implements FitKernel {
   readonly kind = 'plain';
+  readonly grid: KernelGrid;
+  readonly loops: ShapeLoops;
   readonly counts: Float64Array;
   readonly model: Float64Array;
   readonly columns: readonly Float64Array[];
@@ -97,8 +109,9 @@ class PlainFitKernel implements FitKernel {
   readonly #product: Float64Array;
   #scale: PoissonScale | null = null;
 
-  constructor(channels: number, parameters: number) {
-    const array = (): Float64Array => new Float64Array(channels);
+  constructor(grid: FitGrid, parameters: number) {
+    const array = (): Float64Array => new Float64Array(grid.centresEv.length);
+    this.grid = kernelGrid(grid);
     this.counts = array();
     this.model = array();
     this.columns = Array.from({ length: parameters }, array);
@@ -106,6 +119,7 @@ class PlainFitKernel implements FitKernel {
     this.#weights = array();
     this.#residuals = array();
     this.#product = array();
+    this.loops = plainLoops(this.grid, this.model, this.columns);
   }
 
   prepare(scale: PoissonScale | null): void {
@@ -117,10 +131,7 @@ class PlainFitKernel implements FitKernel {
   }
 
   dataPart(): number {
-    if (this.#scale === null) return 0;
-    let part = 0;
-    for (const n of this.#data) if (n > 0) part += timesLog(n) - n;
-    return 2 * part;
+    return this.#scale === null ? 0 : dataPartOf(this.#data);
   }
 
   weigh(): void {
@@ -133,9 +144,10 @@ class PlainFitKernel implements FitKernel {
     const data = this.#data;
     const weights = this.#weights;
     const residuals = this.#residuals;
-    const logLeast = log(least);
-    let deviance = 0;
-    let pearson = 0;
+    const square = scale * scale;
+    const perTwice = 1 / (2 * least);
+    const deviance = [0, 0];
+    const pearson = [0, 0];
     for (let k = 0; k < model.length; k++) {
       const n = data[k];
       if (Number.isNaN(n)) {
@@ -144,21 +156,20 @@ class PlainFitKernel implements FitKernel {
         continue;
       }
       const mu = model[k] * scale + shift;
+      const clamped = mu > least ? mu : least;
+      const inverse = 1 / clamped;
       const difference = n - mu;
-      const inverse = 1 / (mu > least ? mu : least);
       const pull = difference * inverse;
-      weights[k] = scale * scale * inverse;
+      weights[k] = square * inverse;
       residuals[k] = scale * pull;
-      pearson += difference * pull;
-      if (mu > least) deviance += mu - n * log(mu);
-      else {
-        const atLeast = n - least;
-        const bend = (difference * difference - atLeast * atLeast) / (2 * least);
-        deviance += least - n * logLeast + bend;
-      }
+      pearson[k & 1] += difference * pull;
+      const straight = clamped - n * logarithm(clamped);
+      const atLeast = n - least;
+      const bend = (difference * difference - atLeast * atLeast) * perTwice;
+      deviance[k & 1] += mu > least ? straight : straight + bend;
     }
-    sums.deviance = 2 * deviance;
-    sums.pearson = pearson;
+    sums.deviance = 2 * (deviance[0] + deviance[1]);
+    sums.pearson = pearson[0] + pearson[1];
   }
 
   #weighAlike(): void {
@@ -166,16 +177,16 @@ class PlainFitKernel implements FitKernel {
     const data = this.#data;
     const weights = this.#weights;
     const residuals = this.#residuals;
-    let sum = 0;
+    const sum = [0, 0];
     for (let k = 0; k < model.length; k++) {
       const difference = data[k] - model[k];
       const isThere = !Number.isNaN(difference);
       weights[k] = isThere ? 1 : 0;
       residuals[k] = isThere ? difference : 0;
-      if (isThere) sum += difference * difference;
+      if (isThere) sum[k & 1] += difference * difference;
     }
-    sums.deviance = sum;
-    sums.pearson = sum;
+    sums.deviance = sum[0] + sum[1];
+    sums.pearson = sums.deviance;
   }
 
   normal(
@@ -192,13 +203,8 @@ class PlainFitKernel implements FitKernel {
     for (let i = 0; i < size; i++) {
       const column = columns[used[i]];
       const { first, end } = spans[used[i]];
-      let sum = 0;
-      for (let k = first; k < end; k++) {
-        const value = column[k];
-        product[k] = value * weights[k];
-        sum += value * residuals[k];
-      }
-      gradient[i] = sum;
+      for (let k = first; k < end; k++) product[k] = column[k] * weights[k];
+      gradient[i] = dot(residuals, column, first, end);
       for (let j = 0; j <= i; j++) {
         const other = spans[used[j]];
         const from = Math.max(first, other.first);
@@ -208,11 +214,46 @@ class PlainFitKernel implements FitKernel {
   }
 }
 
+function plainLoops(
+  grid: KernelGrid,
+  model: Float64Array,
+  columns: readonly Float64Array[],
+): ShapeLoops {
+  const target = (first: number, count: number, withColumns: boolean) => ({
+    model,
+    columns: withColumns ? columns.slice(first, first + count) : null,
+  });
+  return {
+    polynomial: (a, b, c) => addPolynomial(grid, model, a, b, c),
+    decay: (first, withColumns, level, length) =>
+      addDecay(grid, target(first, 2, withColumns), level, length),
+    gaussian: (first, span, withColumns, total, middle, fwhmEv) =>
+      addGaussian(grid, span, target(first, 3, withColumns), total, middle, fwhmEv),
+    lorentzian: (first, withColumns, total, middle, fwhmEv, weight, hasShare) =>
+      addLorentzian(
+        grid,
+        target(first, hasShare ? 4 : 3, withColumns),
+        total,
+        middle,
+        fwhmEv,
+        weight,
+      ),
+  };
+}
+
 /** n ln n of small whole numbers, which counts mostly are. */
 const knownProducts = Float64Array.from({ length: 4096 }, (_, n) => (n === 0 ? 0 : n * log(n)));
 
-function timesLog(n: number): number {
-  return n < knownProducts.length && Number.isInteger(n) ? knownProducts[n] : n * log(n);
+/** 2 Σ (n ln n − n) of scaled counts; no data and what lies below 0 left out. */
+export function dataPartOf(data: Float64Array): number {
+  let part = 0;
+  for (let k = 0; k < data.length; k++) {
+    const n = data[k];
+    if (!(n > 0)) continue;
+    const isKnown = n < knownProducts.length && Number.isInteger(n);
+    part += (isKnown ? knownProducts[n] : n * log(n)) - n;
+  }
+  return 2 * part;
 }
 
 /** Four chains, so that additions need not wait for each other. */

@@ -7,11 +7,17 @@
  */
 import type { ChannelSpan } from '../peaks/shape';
 import { BoundedStep, partOfFall } from './bounded-step';
-import { createPlainFitKernel, type FitKernel, poissonScale } from './fit-kernel';
+import {
+  type CreateFitKernel,
+  createPlainFitKernel,
+  type FitKernel,
+  poissonScale,
+} from './fit-kernel';
 import { createLayout, type FitLayout, type FitModel, followTies } from './fit-model';
 import { clip, move, stride } from './fit-move';
 import { type FitStatus, fitStatus } from './fit-plan';
 import { Information } from './information';
+import { type EvaluateShape, shapeEvaluator } from './kernel-evaluate';
 
 /** How near to the minimum a fit ends: it stops when a step would lower the deviance by less than this many units (of σ²). */
 export const mapTolerance = 1e-3;
@@ -48,7 +54,7 @@ export class SpectrumFitter {
   readonly kernel: FitKernel;
   readonly found: SpectrumFit;
   readonly #layouts = new Map<string, FitLayout>();
-  readonly #componentColumns: readonly (readonly Float64Array[])[];
+  readonly #evaluators: readonly EvaluateShape[];
   readonly #componentValues: readonly Float64Array[];
   readonly #spans: ChannelSpan[];
   readonly #trial: Float64Array;
@@ -56,14 +62,13 @@ export class SpectrumFitter {
   readonly #informations = new Map<FitLayout, Information>();
   readonly #steps = new Map<number, BoundedStep>();
 
-  constructor(model: FitModel, kernel?: FitKernel) {
+  constructor(model: FitModel, createKernel: CreateFitKernel = createPlainFitKernel) {
     const { plan, grid } = model;
     const size = plan.parameters.length;
     this.model = model;
-    this.kernel = kernel ?? createPlainFitKernel(grid.centresEv.length, size);
-    const { columns } = this.kernel;
-    this.#componentColumns = plan.components.map(({ first, count }) =>
-      columns.slice(first, first + count),
+    this.kernel = createKernel(grid, size);
+    this.#evaluators = plan.components.map(({ first }, c) =>
+      shapeEvaluator(model.shapes[c], first, this.kernel),
     );
     this.#trial = new Float64Array(size);
     this.#componentValues = plan.components.map(({ first, count }) =>
@@ -155,13 +160,7 @@ export class SpectrumFitter {
     kernel.model.fill(0);
     for (let c = 0; c < components.length; c++) {
       if (!isIn[c]) continue;
-      const columns = withColumns ? this.#componentColumns[c] : null;
-      const span = model.shapes[c].evaluate(
-        model.grid,
-        this.#componentValues[c],
-        kernel.model,
-        columns,
-      );
+      const span = this.#evaluators[c](this.#componentValues[c], withColumns);
       const { first, count } = components[c];
       if (withColumns) for (let i = first; i < first + count; i++) this.#spans[i] = span;
     }

@@ -3,7 +3,7 @@ import { log } from '../numeric/elementary';
 import { type ChosenFit, ComponentChooser, propagatedError } from './chosen-fit';
 import { DerivedValues } from './derived-values';
 import { plannedStart } from './estimate-starts';
-import type { FitKernel } from './fit-kernel';
+import type { CreateFitKernel } from './fit-kernel';
 import type { FitModel } from './fit-model';
 import { fitStatus } from './fit-plan';
 import { qualityAt, type RecordLayout, recordLayout, startFromRecord } from './fit-record';
@@ -51,8 +51,8 @@ export class PixelFitter {
   readonly #devianceAt: number;
   readonly #freeCountAt: number;
 
-  constructor(model: FitModel, kernel?: FitKernel) {
-    this.fitter = new SpectrumFitter(model, kernel);
+  constructor(model: FitModel, createKernel?: CreateFitKernel) {
+    this.fitter = new SpectrumFitter(model, createKernel);
     this.layout = recordLayout(model);
     this.chooser = new ComponentChooser(this.fitter);
     this.#linear = new LinearStarts(model);
@@ -103,7 +103,7 @@ export class PixelFitter {
     for (const row of rows) {
       if (isSettled()) return best;
       if (row === null || !this.#isFit(row)) continue;
-      startFromRecord(this.layout, row, this.#ownStart(counts), this.#start);
+      startFromRecord(this.layout, row, this.#fallback(row, counts), this.#start);
       attempt(this.#start);
     }
     if (isSettled()) return best;
@@ -113,6 +113,15 @@ export class PixelFitter {
       attempt(this.#movedStart(counts, widening, shift));
     }
     return best;
+  }
+
+  /** What a row leaves out: nothing where every component was kept. */
+  #fallback(row: Float64Array, counts: Float64Array): Float64Array {
+    const { quantities } = this.layout;
+    for (let i = 0; i < quantities.length; i++) {
+      if (quantities[i].parameter >= 0 && Number.isNaN(row[i])) return this.#ownStart(counts);
+    }
+    return this.#planned;
   }
 
   /** The plan's start, with areas and levels solved for. */

@@ -31,7 +31,7 @@ test('every pixel is fitted, to what the command line computes', async ({ page }
   await expect(page.getByRole('button', { name: 'All pixels fitted' })).toBeVisible({
     timeout: 40_000,
   });
-  const results = replay(text);
+  const results = replay(text, { withModel: true });
   for (const pixel of [
     { x: 42, y: 59 },
     { x: 5, y: 8 },

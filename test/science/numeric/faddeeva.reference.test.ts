@@ -41,6 +41,18 @@ describe('the Faddeeva function', () => {
     }
   });
 
+  it('agrees with scipy.special.wofz (SciPy 1.10) to 1e-13 of its modulus', () => {
+    const { wofz = [] } = JSON.parse(
+      readFileSync(new URL('../../fixtures/peaks/peaks.expected.json', import.meta.url), 'utf8'),
+    ) as Readonly<Record<string, readonly (readonly number[])[]>>;
+    expect(wofz.length).toBeGreaterThan(400);
+    for (const [x = 0, y = 0, real = 0, imaginary = 0] of wofz) {
+      const out = jetAt(x, y);
+      const off = Math.hypot(out[0]! - real, out[1]! - imaginary);
+      expect(off / Math.hypot(real, imaginary)).toBeLessThan(1e-13);
+    }
+  });
+
   it('gives the same with and without derivatives', () => {
     const out = new Float64Array(2);
     for (const [x = 0, y = 0] of rows) {

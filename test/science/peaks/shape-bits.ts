@@ -64,7 +64,7 @@ export const pinnedShapeBits = [
   'gaussian 64410e0b5c1edde1',
   'lorentzian 99007765b1e4810c',
   'pseudo-voigt ce458a1d29215977',
-  'voigt 1288832ed482aba1',
+  'voigt 9b1174b8830b4815',
   'tailed 4c7ae052b7bb7a2b',
   'fano fdf2aad49afe1faa',
   'flat 2ad38fdfd14581e8',

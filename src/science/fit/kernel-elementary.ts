@@ -1,7 +1,7 @@
 /**
  * e^x, ln x and angles as the fit's kernels have them: fewer operations than `numeric/elementary`, in an
  * order two of them can be done at once, and so with the same bits in WebAssembly vectors. Greatest relative
- * errors (measured against `numeric/elementary` on 10⁵ arguments): 3e-16, 4e-16, 4e-16.
+ * errors (measured against `numeric/elementary` on 10⁵ arguments): 4e-16, 3e-16, and 5e-14 where the angle's series ends.
  */
 
 const isLittleEndian = new Uint8Array(new Uint32Array([1]).buffer)[0] === 1;

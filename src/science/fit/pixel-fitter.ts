@@ -89,7 +89,8 @@ export class PixelFitter {
     const refused = this.#refusal(counts, channels);
     if (refused !== null) return this.#writeEmpty(best, refused);
     let isFirst = true;
-    const isSettled = (): boolean => !isFirst && this.#isConvincing(best, channels, usualChi2r);
+    let isBoundUsual = false;
+    const isGood = (): boolean => !isFirst && this.#isGood(best, channels, usualChi2r);
     const attempt = (start: Float64Array): void => {
       const found = this.chooser.fit(start, tolerance);
       this.#write(trial, found);
@@ -101,15 +102,18 @@ export class PixelFitter {
       isFirst = false;
     };
     for (const row of rows) {
-      if (isSettled()) return best;
+      if (isGood()) break;
       if (row === null || !this.#isFit(row)) continue;
       startFromRecord(this.layout, row, this.#fallback(row, counts), this.#start);
       attempt(this.#start);
+      isBoundUsual = row[this.#statusAt] === fitStatus.atBound;
     }
-    if (isSettled()) return best;
+    // At a bound where its neighbour was not, it may have come there on the way: it is tried from the plan's start too.
+    const isAtBound = best[this.#statusAt] === fitStatus.atBound;
+    if (isGood() && (isBoundUsual || !isAtBound)) return best;
     attempt(this.#ownStart(counts));
     for (const [widening, shift] of multiStart) {
-      if (isSettled() || this.#isOnlyAtBound(best, channels, usualChi2r)) return best;
+      if (isGood()) return best;
       attempt(this.#movedStart(counts, widening, shift));
     }
     return best;
@@ -163,12 +167,7 @@ export class PixelFitter {
     return status === fitStatus.converged || status === fitStatus.atBound;
   }
 
-  #isConvincing(row: Float64Array, channels: number, usualChi2r: number): boolean {
-    return row[this.#statusAt] === fitStatus.converged && this.#isUsual(row, channels, usualChi2r);
-  }
-
-  /** Tried from its neighbours and from the plan's start, it ends at the bound: it belongs there. */
-  #isOnlyAtBound(row: Float64Array, channels: number, usualChi2r: number): boolean {
+  #isGood(row: Float64Array, channels: number, usualChi2r: number): boolean {
     return this.#isFit(row) && this.#isUsual(row, channels, usualChi2r);
   }
 

@@ -13,6 +13,7 @@ import { bandQuantityUnit } from '../recipe/offered-maps';
 import type { BlendChannel, BlendMode, Recipe } from '../recipe/schema';
 import { type LimitPair, orderedLimits } from '../science/limits';
 import { mapByName } from '../science/map-by-name';
+import { sayUndoable } from './undoable';
 import type { Workbench } from './workbench';
 
 /** Given to new channels in turn: far apart in hue, none of them dark. */
@@ -77,15 +78,12 @@ export function setChannelGamma(workbench: Workbench, index: number, gamma: numb
 }
 
 export function removeChannel(workbench: Workbench, index: number): void {
-  const { recipe, notices } = workbench;
   const channel = channelAt(workbench, index);
   if (channel === undefined) return;
   edit(workbench, `Take ${channel.source} out of the blend`, (now) =>
     removeBlendChannel(now, index),
   );
-  notices.say('done', `Channel ${index + 1} was taken out of the blend.`, {
-    action: { label: 'Undo', run: recipe.undo },
-  });
+  sayUndoable(workbench, `Channel ${index + 1} was taken out of the blend.`);
 }
 
 /** A new channel of the first band that has none yet, in a colour no channel has. */

@@ -13,6 +13,7 @@ import {
 import type { ModelComponent, ParameterSpec, PeakModel, Recipe } from '../recipe/schema';
 import { type ComponentShape, isPeakShape, shapeParameters } from '../recipe/shape-parameters';
 import { cm1FromEv } from '../science/units';
+import { sayUndoable } from './undoable';
 import type { Workbench } from './workbench';
 
 /** The settings of one parameter; null takes the setting away. */
@@ -59,12 +60,10 @@ export function addFloor(workbench: Workbench): void {
 }
 
 export function deleteComponent(workbench: Workbench, name: string): void {
-  const { recipe, notices } = workbench;
+  const { recipe } = workbench;
   recipe.edit(`Delete ${name}`, (now) => removeComponent(now, name));
   selectModel(workbench);
-  notices.say('done', `Component ${name} was deleted.`, {
-    action: { label: 'Undo', run: recipe.undo },
-  });
+  sayUndoable(workbench, `Component ${name} was deleted.`);
 }
 
 export function setComponentName(workbench: Workbench, from: string, to: string): void {

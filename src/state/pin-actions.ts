@@ -2,6 +2,7 @@
 import { addPin, labelPin, movePin, removePin as removePinFrom } from '../recipe/edits';
 import type { Pin } from '../recipe/schema';
 import type { Pixel } from './crosshair';
+import { sayUndoable } from './undoable';
 import type { Workbench } from './workbench';
 
 /** The pin that marks a pixel; null where there is none. */
@@ -29,11 +30,11 @@ export function togglePinAt(workbench: Workbench, pixel: Pixel): void {
 }
 
 export function removePin(workbench: Workbench, name: string): void {
-  const { recipe, notices } = workbench;
+  const { recipe } = workbench;
   const before = recipe.getState().recipe;
   recipe.edit(`Let go of pin ${name}`, (now) => removePinFrom(now, name));
   if (recipe.getState().recipe === before) return;
-  notices.say('done', `Pin ${name} was let go.`, { action: { label: 'Undo', run: recipe.undo } });
+  sayUndoable(workbench, `Pin ${name} was let go.`);
 }
 
 /** Moves a pin; until the gesture ends all moves are one undo step. A pixel that is pinned already stays the other pin's. */

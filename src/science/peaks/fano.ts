@@ -10,6 +10,7 @@ import { area, centre, fwhm, plainParameter } from './peak-parameters';
 import type { Shape } from './shape';
 import { leastWidthEv } from './widths';
 
+/** Touches every channel; negative where the continuum is missing. Any q, infinite ones too. */
 export const fano: Shape = {
   name: 'fano',
   parameters: [area, centre, fwhm, plainParameter('q')],

@@ -4,6 +4,7 @@ import { lorentzian } from './lorentzian';
 import { area, centre, fwhm, plainParameter } from './peak-parameters';
 import type { Shape } from './shape';
 
+/** Touches every channel, as its Lorentzian does; integrated over them as its parts are. */
 export const pseudoVoigt: Shape = {
   name: 'pseudo-voigt',
   parameters: [area, centre, fwhm, plainParameter('eta')],

@@ -15,6 +15,7 @@ const shapes: ReadonlyMap<string, Shape> = new Map(
   ),
 );
 
+/** Peaks first, then what they stand on. */
 export const shapeNames: readonly string[] = [...shapes.keys()];
 
 /** @throws RimlightError 'recipe' - when there is no such shape */

@@ -25,6 +25,7 @@ const farShare = 0.18;
 
 const jet = new Float64Array(6);
 
+/** Touches every channel. A width of 0 leaves the other shape, both of 0 a spike. */
 export const voigt: Shape = {
   name: 'voigt',
   parameters: [area, centre, energyParameter('fwhm_g'), energyParameter('fwhm_l')],

@@ -40,10 +40,34 @@ test('gamma by keys and mixing by click change the picture as the recipe says', 
 });
 
 test('a channel is added, taken out, and brought back by undo', async ({ page }) => {
-  const channels = async (): Promise<number> =>
-    JSON.parse((await savedRecipe(page)).text).blend.channels.length;
+  interface Channel {
+    readonly source: string;
+    readonly colour: string;
+  }
+  const saved = async (): Promise<{ text: string; channels: readonly Channel[] }> => {
+    const { text } = await savedRecipe(page);
+    return { text, channels: JSON.parse(text).blend.channels };
+  };
+  const { channels: three } = await saved();
   await page.getByRole('button', { name: 'Add channel' }).click();
-  expect(await channels()).toBe(4);
+  const { text: withFourth, channels: four } = await saved();
+  expect(four.slice(0, 3)).toEqual(three);
+  expect(three.map(({ source }) => source)).not.toContain(four[3]?.source);
+  expect(three.map(({ colour }) => colour)).not.toContain(four[3]?.colour);
+  await page.getByRole('button', { name: /^Remove channel 1/ }).click();
+  const { text: withoutFirst, channels: left } = await saved();
+  expect(left).toEqual(four.slice(1));
+  // What is drawn is what is left, then all four again.
+  const holdAgainst = async (recipeText: string): Promise<void> => {
+    const results = replay(recipeText);
+    for (const pixel of pixels) {
+      await expect.poll(() => colourAt(blendMap(page), pixel)).toEqual([...results.blendAt(pixel)]);
+    }
+  };
+  await holdAgainst(withoutFirst);
   await page.keyboard.press('Control+z');
-  expect(await channels()).toBe(3);
+  expect((await saved()).text).toBe(withFourth);
+  await holdAgainst(withFourth);
+  await page.keyboard.press('Control+z');
+  expect((await saved()).channels).toEqual(three);
 });

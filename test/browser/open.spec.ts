@@ -8,15 +8,30 @@ test('the demo scan opens by itself, without a fault, asking nobody else for any
   const { faults, requests } = watch(page);
   await openDemo(page);
   await pointAt(page, leadMap(page), { x: 20, y: 40 });
-  // Told, not tested: how fast a machine is says nothing of the program.
-  const seconds = await page.evaluate(() => performance.now() / 1000);
-  test.info().annotations.push({ type: 'on screen after', description: `${seconds.toFixed(2)} s` });
   await expect(scanLine(page)).toHaveText(
     'tent-field.h5 · 64 × 64 px · 15 nm/px · 512 ch · 594.1 nm',
   );
   expect(faults).toEqual([]);
   const origins = new Set(requests.map((url) => new URL(url).origin));
   expect([...origins].filter((origin) => origin !== 'null')).toEqual([new URL(page.url()).origin]);
+});
+
+test('the demo answers to the hand within 3 s of the first visit', async ({ browser }) => {
+  // What else the machine does is no matter of the program: the quickest of some visits counts.
+  const visits = 6;
+  const seconds: number[] = [];
+  while (seconds.length < visits && !seconds.some((time) => time < 3)) {
+    // A context of its own: nothing is kept from the visit before, in cache or storage.
+    const context = await browser.newContext();
+    const visit = await context.newPage();
+    await openDemo(visit);
+    await pointAt(visit, leadMap(visit), { x: 20, y: 40 });
+    seconds.push((await visit.evaluate(() => performance.now())) / 1000);
+    await context.close();
+  }
+  const description = seconds.map((time) => `${time.toFixed(2)} s`).join(', ');
+  test.info().annotations.push({ type: 'on screen and answering after', description });
+  expect(Math.min(...seconds)).toBeLessThan(3);
 });
 
 test('a map hangs from every band, in order of energy', async ({ page }) => {

@@ -1,5 +1,6 @@
 /** What follows from a component's parameters: height, whole width, Raman shift, each with its error. */
 import type { FitGrid, Shape } from '../peaks/shape';
+import { tailedSummit } from '../peaks/whole-width';
 import { voigtFwhm } from '../peaks/widths';
 import { cm1PerEv, shiftCm1FromEv } from '../units';
 import type { FitModel } from './fit-model';
@@ -10,8 +11,6 @@ export interface Derived {
   value: number;
   readonly gradient: Float64Array;
 }
-
-const bisections = 40;
 
 export class DerivedValues {
   readonly #model: FitModel;
@@ -63,24 +62,7 @@ export class DerivedValues {
     const [, centre, width, last] = own;
     // ε = 1/q, half the width from the centre
     if (shape.name === 'fano') return last === 0 ? centre : centre + width / (2 * last);
-    return shape.name === 'tailed' ? this.#tailedSummit(shape, own) : centre;
-  }
-
-  /** Between the Gaussian's centre and one σ or one tail below it, where the derivative by the centre changes sign. */
-  #tailedSummit(shape: Shape, own: Float64Array): number {
-    const [, centre, width, tail] = own;
-    const unit = Float64Array.of(1, centre, width, tail);
-    let high = centre;
-    let low = centre - Math.min(width, tail);
-    const columns = this.#columns.slice(0, shape.parameters.length);
-    for (let turn = 0; turn < bisections; turn++) {
-      const middle = 0.5 * (low + high);
-      if (middle <= low || middle >= high) break;
-      this.#at(shape, unit, middle, columns);
-      if (columns[1][0] > 0) high = middle;
-      else low = middle;
-    }
-    return 0.5 * (low + high);
+    return shape.name === 'tailed' ? centre + tailedSummit(width, last) : centre;
   }
 
   #at(shape: Shape, own: Float64Array, energyEv: number, columns: readonly Float64Array[]): void {

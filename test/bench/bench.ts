@@ -19,6 +19,7 @@ import type { OpenScan } from '../../workers/engine';
 import { createMomentKernel } from '../../workers/kernel/moment-kernel';
 import { createNodeEngine } from '../../workers/node-engine';
 import { benchCondition } from './condition';
+import { benchFits } from './fit-bench';
 import { median, ms, printTable, quantile, type Row, timesInTurn, timesOf, told } from './measure';
 import { plainTotals, servesPlainPass, startPlainThreads } from './plain-pass';
 import { cubeShape, syntheticCounts, wavelengths } from './synthetic-cube';
@@ -31,6 +32,8 @@ const bandsPerRound = 6;
 async function bench(): Promise<void> {
   const { ny, nx, nk } = cubeShape;
   const cores = availableParallelism();
+  if (!process.argv.includes('--bands')) printTable(benchFits());
+  if (process.argv.includes('--fits')) return;
   console.log(
     `${ny} × ${nx} × ${nk} 16-bit counts; ${cores} cores, ${cpus()[0]?.model ?? 'unknown'}; Node ${process.version}\n`,
   );

@@ -1,7 +1,6 @@
 /** A model's components put together from the loops of a kernel, and from `peaks/` where the kernel has none. */
-import { gaussian } from '../peaks/gaussian';
 import type { ChannelSpan, Shape } from '../peaks/shape';
-import { gaussianSpan, type KernelGrid } from './kernel-shapes';
+import { gaussianSpan, integrateGaussian, type KernelGrid, reachOfGaussian } from './kernel-shapes';
 
 /** The loops of one kernel; columns are those from `first` on. */
 export interface ShapeLoops {
@@ -61,13 +60,7 @@ export function shapeEvaluator(shape: Shape, first: number, host: ShapeHost): Ev
         return whole;
       };
     case 'gaussian':
-      return (values, withColumns) => {
-        const [total, middle, fwhmEv] = values;
-        const span = gaussianSpan(grid, middle, fwhmEv);
-        if (span === null) return shape.evaluate(grid, values, model, withColumns ? own : null);
-        loops.gaussian(first, span, withColumns, total, middle, fwhmEv);
-        return span;
-      };
+      return gaussianEvaluator(host, first, own);
     case 'lorentzian':
       return ([total, middle, fwhmEv], withColumns) => {
         loops.lorentzian(first, withColumns, total, middle, fwhmEv, 1, false);
@@ -90,6 +83,32 @@ function fillPowers({ offsetsEv }: KernelGrid, own: readonly Float64Array[]): vo
   }
 }
 
+/** By vectors where channels are narrow, integrated over each where they are not. */
+function gaussianEvaluator(
+  { grid, model, loops }: ShapeHost,
+  first: number,
+  own: readonly Float64Array[],
+): EvaluateShape {
+  const alone = threeArrays(grid);
+  return ([total, middle, fwhmEv], withColumns) => {
+    const narrow = gaussianSpan(grid, middle, fwhmEv);
+    if (narrow !== null) {
+      loops.gaussian(first, narrow, withColumns, total, middle, fwhmEv);
+      return narrow;
+    }
+    const span = reachOfGaussian(grid, middle, fwhmEv);
+    integrateGaussian(grid, span, middle, fwhmEv, alone);
+    for (let k = span.first; k < span.end; k++) {
+      model[k] += total * alone[0][k];
+      if (!withColumns) continue;
+      own[0][k] = alone[0][k];
+      own[1][k] = total * alone[1][k];
+      own[2][k] = total * alone[2][k];
+    }
+    return span;
+  };
+}
+
 /** The Lorentzian's share everywhere, the Gaussian's where it reaches. */
 function pseudoVoigt(
   { grid, model, loops }: ShapeHost,
@@ -97,26 +116,25 @@ function pseudoVoigt(
   own: readonly Float64Array[],
 ): EvaluateShape {
   const whole = { first: 0, end: grid.centresEv.length };
-  const alone = new Float64Array(grid.centresEv.length);
-  const ofGaussian = [0, 1, 2].map(() => new Float64Array(grid.centresEv.length));
-  const unit = new Float64Array(3);
+  const alone = threeArrays(grid);
   return ([total, middle, fwhmEv, eta], withColumns) => {
     loops.lorentzian(first, withColumns, total, middle, fwhmEv, eta, true);
-    unit[0] = 1;
-    unit[1] = middle;
-    unit[2] = fwhmEv;
-    const span = gaussian.evaluate(grid, unit, alone, withColumns ? ofGaussian : null);
+    const span = reachOfGaussian(grid, middle, fwhmEv);
+    integrateGaussian(grid, span, middle, fwhmEv, alone);
     const rest = total * (1 - eta);
     for (let k = span.first; k < span.end; k++) {
-      const share = alone[k];
-      alone[k] = 0;
+      const share = alone[0][k];
       model[k] += rest * share;
       if (!withColumns) continue;
       own[0][k] += (1 - eta) * share;
-      own[1][k] += rest * ofGaussian[1][k];
-      own[2][k] += rest * ofGaussian[2][k];
+      own[1][k] += rest * alone[1][k];
+      own[2][k] += rest * alone[2][k];
       own[3][k] -= total * share;
     }
     return whole;
   };
+}
+
+function threeArrays({ centresEv }: KernelGrid): readonly Float64Array[] {
+  return [0, 1, 2].map(() => new Float64Array(centresEv.length));
 }

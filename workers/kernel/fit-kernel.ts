@@ -12,7 +12,7 @@ import type { ChannelSpan, FitGrid } from '../../src/science/peaks/shape';
 import { fwhmPerSigma } from '../../src/science/peaks/widths';
 import { fitModuleBytes } from './fit-module';
 
-type Numbers = (...numbers: readonly (number | boolean)[]) => void;
+type Numbers = (...numbers: (number | boolean)[]) => void;
 
 const loopNames = [
   'weighCounts',
@@ -100,6 +100,8 @@ class WasmFitKernel implements FitKernel {
   readonly #gradient: Float64Array;
   readonly #sums: Float64Array;
   readonly #table: Int32Array;
+  /** of each column */
+  readonly #addresses: readonly number[];
   #scale: PoissonScale | null = null;
 
   constructor(exports: FitExports, grid: FitGrid, parameters: number) {
@@ -130,6 +132,7 @@ class WasmFitKernel implements FitKernel {
     const columns = Array.from({ length: parameters }, array);
     this.model = model.subarray(0, channels);
     this.columns = columns.map((column) => column.subarray(0, channels));
+    this.#addresses = columns.map(addressOf);
     this.counts = new Float64Array(channels);
     this.#matrix = memory.doubles(parameters * parameters);
     this.#gradient = memory.doubles(parameters);
@@ -154,16 +157,29 @@ class WasmFitKernel implements FitKernel {
   weigh(): void {
     const { sums } = this;
     const scale = this.#scale;
-    const arrays = [this.#data, this.model, this.#weights, this.#residuals].map(addressOf);
-    const at = addressOf(this.#sums);
+    const data = this.#data.byteOffset;
+    const model = this.model.byteOffset;
+    const weights = this.#weights.byteOffset;
+    const residuals = this.#residuals.byteOffset;
+    const at = this.#sums.byteOffset;
     if (scale === null) {
-      this.#exports.weighAlike(this.#channels, ...arrays, at);
+      this.#exports.weighAlike(this.#channels, data, model, weights, residuals, at);
       sums.deviance = this.#sums[0];
       sums.pearson = this.#sums[0];
       return;
     }
     const { scale: by, shift, least } = scale;
-    this.#exports.weighCounts(this.#channels, ...arrays, by, shift, least, at);
+    this.#exports.weighCounts(
+      this.#channels,
+      data,
+      model,
+      weights,
+      residuals,
+      by,
+      shift,
+      least,
+      at,
+    );
     sums.deviance = 2 * this.#sums[0];
     sums.pearson = this.#sums[1];
   }
@@ -178,7 +194,7 @@ class WasmFitKernel implements FitKernel {
     const table = this.#table;
     for (let i = 0; i < size; i++) {
       const { first, end } = spans[used[i]];
-      table[3 * i] = addressOf(this.columns[used[i]]);
+      table[3 * i] = this.#addresses[used[i]];
       table[3 * i + 1] = first;
       table[3 * i + 2] = end;
     }
@@ -206,7 +222,7 @@ class WasmFitKernel implements FitKernel {
     const channels = this.#channels;
     const model = addressOf(this.model);
     const columnAt = (first: number, withColumns: boolean): number =>
-      withColumns ? addressOf(this.columns[first]) : 0;
+      withColumns ? this.#addresses[first] : 0;
     const { addPolynomial, addDecay, addGaussian, addLorentzian } = this.#exports;
     return {
       polynomial: (a, b, c) => addPolynomial(channels, offsets, model, a, b, c),
@@ -216,14 +232,36 @@ class WasmFitKernel implements FitKernel {
       },
       gaussian: (column, { first, end }, withColumns, total, middle, fwhmEv) => {
         const at = columnAt(column, withColumns);
-        const sigma = fwhmEv / fwhmPerSigma;
-        const shape = [total, middle, sigma, fwhmPerSigma];
-        addGaussian(first, end, centres, widths, model, at, stride, ...shape);
+        addGaussian(
+          first,
+          end,
+          centres,
+          widths,
+          model,
+          at,
+          stride,
+          total,
+          middle,
+          fwhmEv / fwhmPerSigma,
+          fwhmPerSigma,
+        );
       },
       lorentzian: (first, withColumns, total, middle, fwhmEv, weight, hasShare) => {
         const at = columnAt(first, withColumns);
-        const shape = [total, middle, fwhmEv / 2, weight];
-        addLorentzian(channels, edges, widths, model, at, stride, ...shape, hasShare);
+        const half = fwhmEv / 2;
+        addLorentzian(
+          channels,
+          edges,
+          widths,
+          model,
+          at,
+          stride,
+          total,
+          middle,
+          half,
+          weight,
+          hasShare,
+        );
       },
     };
   }

@@ -13,7 +13,7 @@ export function stride(
     const widths = strides[free[i]];
     if (widths.length === 0) continue;
     let most = 0;
-    for (const width of widths) most += Math.abs(values[width]);
+    for (let w = 0; w < widths.length; w++) most += Math.abs(values[widths[w]]);
     const length = Math.abs(step[i]);
     if (most > 0 && length * share > most) share = most / length;
   }

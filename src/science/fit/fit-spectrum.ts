@@ -129,7 +129,8 @@ export class SpectrumFitter {
     const { found, model } = this;
     const { free } = layout;
     found.values.set(start);
-    for (const index of free) {
+    for (let i = 0; i < free.length; i++) {
+      const index = free[i];
       found.values[index] = clip(start[index], model.least[index], model.most[index]);
     }
     followTies(model.plan, found.values);

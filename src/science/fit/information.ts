@@ -98,7 +98,7 @@ export class Information implements StepProblem {
   /** @param scale - of every error */
   writeErrors(errors: Float64Array, scale: number, { plan }: FitModel): void {
     errors.fill(Number.NaN);
-    for (const [index, { isFixed }] of plan.parameters.entries()) if (isFixed) errors[index] = 0;
+    for (let i = 0; i < errors.length; i++) if (plan.parameters[i].isFixed) errors[i] = 0;
     const { used, owner, slope } = this.#layout;
     const size = this.#layout.free.length;
     for (let i = 0; i < used.length; i++) {

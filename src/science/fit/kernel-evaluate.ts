@@ -33,7 +33,10 @@ export interface ShapeHost {
   readonly loops: ShapeLoops;
 }
 
-/** Adds one component to the model, with its derivatives in the columns from `first` on; returns the channels touched. */
+/**
+ * Called in every step of every fit, so its values are read by index: taking a typed array apart makes garbage.
+ * Adds one component to the model, with its derivatives in the columns from `first` on; returns the channels touched.
+ */
 export type EvaluateShape = (values: Float64Array, withColumns: boolean) => ChannelSpan;
 
 /**
@@ -43,27 +46,27 @@ export type EvaluateShape = (values: Float64Array, withColumns: boolean) => Chan
 export function shapeEvaluator(shape: Shape, first: number, host: ShapeHost): EvaluateShape {
   const { grid, model, columns, loops } = host;
   const whole = { first: 0, end: grid.centresEv.length };
-  const own = columns.slice(first, first + shape.parameters.length);
+  const { length: size } = shape.parameters;
+  const own = columns.slice(first, first + size);
   switch (shape.name) {
     case 'flat':
     case 'line':
     case 'parabola':
       fillPowers(grid, own);
       return (values) => {
-        const [a, b = 0, c = 0] = values;
-        loops.polynomial(a, b, c);
+        loops.polynomial(values[0], size > 1 ? values[1] : 0, size > 2 ? values[2] : 0);
         return whole;
       };
     case 'decay':
-      return ([level, length], withColumns) => {
-        loops.decay(first, withColumns, level, length);
+      return (values, withColumns) => {
+        loops.decay(first, withColumns, values[0], values[1]);
         return whole;
       };
     case 'gaussian':
       return gaussianEvaluator(host, first, own);
     case 'lorentzian':
-      return ([total, middle, fwhmEv], withColumns) => {
-        loops.lorentzian(first, withColumns, total, middle, fwhmEv, 1, false);
+      return (values, withColumns) => {
+        loops.lorentzian(first, withColumns, values[0], values[1], values[2], 1, false);
         return whole;
       };
     case 'pseudo-voigt':
@@ -90,7 +93,10 @@ function gaussianEvaluator(
   own: readonly Float64Array[],
 ): EvaluateShape {
   const alone = threeArrays(grid);
-  return ([total, middle, fwhmEv], withColumns) => {
+  return (values, withColumns) => {
+    const total = values[0];
+    const middle = values[1];
+    const fwhmEv = values[2];
     const narrow = gaussianSpan(grid, middle, fwhmEv);
     if (narrow !== null) {
       loops.gaussian(first, narrow, withColumns, total, middle, fwhmEv);
@@ -117,7 +123,11 @@ function pseudoVoigt(
 ): EvaluateShape {
   const whole = { first: 0, end: grid.centresEv.length };
   const alone = threeArrays(grid);
-  return ([total, middle, fwhmEv, eta], withColumns) => {
+  return (values, withColumns) => {
+    const total = values[0];
+    const middle = values[1];
+    const fwhmEv = values[2];
+    const eta = values[3];
     loops.lorentzian(first, withColumns, total, middle, fwhmEv, eta, true);
     const span = reachOfGaussian(grid, middle, fwhmEv);
     integrateGaussian(grid, span, middle, fwhmEv, alone);

@@ -46,6 +46,8 @@ export class PixelFitter {
   readonly #start: Float64Array;
   readonly #best: Float64Array;
   readonly #trial: Float64Array;
+  /** of one component */
+  readonly #ownValues: Float64Array;
   readonly #chi2rAt: number;
   readonly #statusAt: number;
   readonly #devianceAt: number;
@@ -63,6 +65,9 @@ export class PixelFitter {
     this.#trial = new Float64Array(this.layout.length);
     this.bestErrors = this.chooser.found.errors.slice();
     this.bestCovariance = this.chooser.found.covariance.slice();
+    this.#ownValues = new Float64Array(
+      Math.max(...model.plan.components.map(({ count }) => count)),
+    );
     this.#chi2rAt = qualityAt(this.layout, 'chi2r');
     this.#statusAt = qualityAt(this.layout, 'status');
     this.#devianceAt = qualityAt(this.layout, 'deviance');
@@ -203,6 +208,12 @@ export class PixelFitter {
     return row;
   }
 
+  #own(values: Float64Array, first: number, count: number): Float64Array {
+    const own = this.#ownValues;
+    for (let i = 0; i < count; i++) own[i] = values[first + i];
+    return own;
+  }
+
   #write(row: Float64Array, found: ChosenFit): void {
     const { quantities } = this.layout;
     const { components } = this.fitter.model.plan;
@@ -218,7 +229,7 @@ export class PixelFitter {
         continue;
       }
       const { first, count: own } = components[quantity.component];
-      const derived = this.#derived.of(quantity, found.values.subarray(first, first + own));
+      const derived = this.#derived.of(quantity, this.#own(found.values, first, own));
       row[i] = derived.value;
       row[count + i] = propagatedError(found, first, own, derived.gradient);
     }

@@ -9,6 +9,8 @@ export class ScaledCholesky {
   readonly #factor: Float64Array;
   readonly #scale: Float64Array;
   readonly #solution: Float64Array;
+  readonly #unit: Float64Array;
+  readonly #column: Float64Array;
   /** by row, 1 where it counts and is determined */
   readonly isSolved: Uint8Array;
 
@@ -17,6 +19,8 @@ export class ScaledCholesky {
     this.#factor = new Float64Array(size * size);
     this.#scale = new Float64Array(size);
     this.#solution = new Float64Array(size);
+    this.#unit = new Float64Array(size);
+    this.#column = new Float64Array(size);
     this.isSolved = new Uint8Array(size);
   }
 
@@ -93,8 +97,8 @@ export class ScaledCholesky {
    */
   invert(out: Float64Array): void {
     const size = this.#size;
-    const unit = new Float64Array(size);
-    const column = new Float64Array(size);
+    const unit = this.#unit;
+    const column = this.#column;
     for (let j = 0; j < size; j++) {
       unit.fill(0);
       unit[j] = 1;

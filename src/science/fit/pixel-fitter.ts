@@ -94,7 +94,6 @@ export class PixelFitter {
     const refused = this.#refusal(counts, channels);
     if (refused !== null) return this.#writeEmpty(best, refused);
     let isFirst = true;
-    let isBoundUsual = false;
     const isGood = (): boolean => !isFirst && this.#isGood(best, channels, usualChi2r);
     const attempt = (start: Float64Array): void => {
       const found = this.chooser.fit(start, tolerance);
@@ -111,11 +110,10 @@ export class PixelFitter {
       if (row === null || !this.#isFit(row)) continue;
       startFromRecord(this.layout, row, this.#fallback(row, counts), this.#start);
       attempt(this.#start);
-      isBoundUsual = row[this.#statusAt] === fitStatus.atBound;
     }
-    // At a bound where its neighbour was not, it may have come there on the way: it is tried from the plan's start too.
+    // At a bound it may have come to rest on the way, and neighbours after it: it is tried from the plan's start too.
     const isAtBound = best[this.#statusAt] === fitStatus.atBound;
-    if (isGood() && (isBoundUsual || !isAtBound)) return best;
+    if (isGood() && !isAtBound) return best;
     attempt(this.#ownStart(counts));
     for (const [widening, shift] of multiStart) {
       if (isGood()) return best;

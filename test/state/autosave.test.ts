@@ -10,7 +10,9 @@ import {
 import { moveBandEnds } from '../../src/state/band-actions';
 import { offerEarlierRecipe } from '../../src/state/earlier-recipe';
 import { openLastWork } from '../../src/state/last-work';
+import { openOffered } from '../../src/state/scan-opening';
 import { createWorkbench, type Workbench } from '../../src/state/workbench';
+import type { ScanInputs } from '../../workers/engine';
 import { createInProcessEngine } from '../../workers/in-process-engine';
 import { makeScan } from '../workers/made-scan';
 import { memoryStorage, openWorkbench, pause, twoBands } from './open-workbench';
@@ -91,14 +93,40 @@ describe('the work of a visit', () => {
 
   it('keeps no copy of a file the page can fetch again', async () => {
     const storage = memoryStorage();
-    const { workbench } = await openWorkbench();
+    const { workbench, made } = await openWorkbench();
     startAutosave(workbench, storage, now);
+    await storage.set('last-inputs', made.inputs);
+    await openOffered(workbench, made.inputs, twoBands, '/sample-data/made.npz');
     moveBandEnds(workbench, { name: 'low' }, { fromEv: 1.83, toEv: 1.87 });
     await written(workbench, storage);
+    expect(storage.kept.get('last-inputs')).toBeNull();
     const last = await loadLastWork(storage);
     expect(last?.work.url).toBe('/sample-data/made.npz');
     expect(last?.inputs).toBeNull();
-    expect(storage.kept.get('last-inputs') ?? null).toBeNull();
+  });
+
+  it('keeps a copy of a file up to 256 MB, and of none larger', async () => {
+    const storage = memoryStorage();
+    const { workbench, made } = await openWorkbench();
+    startAutosave(workbench, storage, now);
+    const { scan } = workbench.session.getState();
+    if (scan === null) throw new Error('no scan');
+    const sized = (size: number): ScanInputs => {
+      // As large as it says, without the bytes: only its size is asked for.
+      const blob = Object.defineProperty(new Blob(['']), 'size', { value: size });
+      return { scan: { kind: 'blob', name: 'sized.npz', blob }, companions: [made.inputs.scan] };
+    };
+    const companion = made.inputs.scan.kind === 'memory' ? made.inputs.scan.bytes.length : 0;
+    const keptOf = async (size: number): Promise<unknown> => {
+      workbench.session.setState(({ scanNumber }) => ({
+        scan: { ...scan, inputs: sized(size), url: null },
+        scanNumber: scanNumber + 1,
+      }));
+      await pause(0);
+      return storage.kept.get('last-inputs');
+    };
+    expect(await keptOf(2 ** 28 - companion)).toMatchObject({ scan: { name: 'sized.npz' } });
+    expect(await keptOf(2 ** 28 - companion + 1)).toBeNull();
   });
 
   it('that can no longer be read is told of, and leaves the screen as it is', async () => {

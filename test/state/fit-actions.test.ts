@@ -4,6 +4,7 @@ import type { Recipe } from '../../src/recipe/schema';
 import { planOf, runFit } from '../../src/state/fit-actions';
 import { openScan } from '../../src/state/scan-opening';
 import type { Workbench } from '../../src/state/workbench';
+import type { OpenScan } from '../../workers/engine';
 import { openWorkbench, twoBands } from './open-workbench';
 
 const withModel: Recipe = {
@@ -87,6 +88,63 @@ describe('a fit of all pixels', () => {
     expect(fitMaps(workbench)).toEqual([]);
     expect(workbench.session.getState().running).toBeNull();
     expect(workbench.fit.getState()).toMatchObject({ madeOf: null, isRunning: false });
+  });
+
+  it('waits for its turn while a scan is being opened', async () => {
+    const { workbench, made } = await openWorkbench(withModel);
+    const { scan } = workbench.session.getState();
+    if (scan === null) throw new Error('no scan');
+    const { plan } = scan.open;
+    const request = { inputs: made.inputs, plan, url: null, recipeFor: null };
+    const opening = openScan(workbench, request);
+    await runFit(workbench);
+    expect(fitMaps(workbench)).toEqual([]);
+    expect(workbench.session.getState().running?.label).toBe('Opening made.npz');
+    expect(await opening).toBe(true);
+  });
+
+  it('that ends after its scan has gone puts nothing over the next', async () => {
+    const { workbench, made } = await openWorkbench(withModel);
+    const { scan } = workbench.session.getState();
+    if (scan === null) throw new Error('no scan');
+    const { open } = scan;
+    const request = { inputs: made.inputs, plan: open.plan, url: null, recipeFor: null };
+    // The engine's answer is held back until the other scan is on screen.
+    const fit: OpenScan['fit'] = async (plan) => {
+      const done = await open.fit(plan);
+      expect(await openScan(workbench, request)).toBe(true);
+      return done;
+    };
+    workbench.session.setState({ scan: { ...scan, open: { ...open, fit } } });
+    await runFit(workbench);
+    expect(workbench.session.getState().scan?.open).not.toBe(open);
+    expect(fitMaps(workbench)).toEqual([]);
+    expect(workbench.fit.getState()).toMatchObject({ madeOf: null, scanFit: null });
+  });
+
+  it('begins anew, and not from what was stopped, once its model was changed', async () => {
+    const other = (recipe: Recipe): Recipe => ({
+      ...recipe,
+      model: {
+        components: [
+          { name: 'floor', shape: 'flat' },
+          { name: 'peak', shape: 'gaussian', centre: 1.9, fwhm: 0.04 },
+        ],
+      },
+    });
+    const stopped = await openWorkbench(withModel);
+    onceFitting(stopped.workbench, () => stopped.workbench.session.getState().running?.stop());
+    await runFit(stopped.workbench);
+    stopped.workbench.recipe.edit('Another shape', other);
+    await runFit(stopped.workbench);
+    const fresh = await openWorkbench(other(withModel));
+    await runFit(fresh.workbench);
+    for (const name of ['fit.peak.area', 'fit.peak.centre', 'fit.chi2r']) {
+      const [one, another] = [stopped, fresh].map(({ workbench }) =>
+        workbench.results.getState().maps.get(name),
+      );
+      expect(one?.values).toEqual(another?.values);
+    }
   });
 
   it('leaves no map of a model that was taken away while it ran', async () => {

@@ -5,6 +5,7 @@ import { setScanChoices } from '../../src/recipe/edits';
 import { deleteBand, moveBandEnds, setBandName } from '../../src/state/band-actions';
 import { showLeadMap } from '../../src/state/lead-actions';
 import { openOffered, openScan } from '../../src/state/scan-opening';
+import type { OpenScan, ScanEngine } from '../../workers/engine';
 import { makeScan } from '../workers/made-scan';
 import { openWorkbench, twoBands } from './open-workbench';
 
@@ -168,18 +169,40 @@ describe('two scans opened in a row', () => {
       url: null,
       recipeFor: null,
     });
+    /** The later one is given its scan once the earlier has ended. */
+    let firstEnds = (): void => undefined;
+    const firstEnded = new Promise<void>((resolve) => {
+      firstEnds = resolve;
+    });
+    const open: ScanEngine['open'] = async (inputs, ...others) => {
+      if (inputs.scan.name === 'second.npz') await firstEnded;
+      return workbench.engine.open(inputs, ...others);
+    };
+    const patient = { ...workbench, engine: { ...workbench.engine, open } };
     const labels: (string | null)[] = [];
-    const first = openScan(workbench, request('first.npz'));
-    const second = openScan(workbench, request('second.npz'));
-    workbench.session.subscribe(({ running }) => labels.push(running?.label ?? null));
+    const first = openScan(patient, request('first.npz'));
+    const second = openScan(patient, request('second.npz'));
+    workbench.session.subscribe(({ running, scan: shown }) => {
+      if (shown === scan) labels.push(running?.label ?? null);
+    });
     expect(await first).toBe(false);
+    expect(workbench.session.getState().running?.label).toBe('Opening second.npz');
+    firstEnds();
     expect(await second).toBe(true);
     await answered();
     expect(workbench.session.getState().scan?.inputs.scan.name).toBe('second.npz');
-    const untilDone = labels.slice(0, labels.indexOf(null));
-    expect(untilDone.length).toBeGreaterThan(0);
-    expect(new Set(untilDone)).toEqual(new Set(['Opening second.npz']));
-    expect(new Set(labels.slice(labels.indexOf(null)))).toEqual(new Set([null]));
+    expect(new Set(labels)).toEqual(new Set(['Opening second.npz']));
+    expect(workbench.session.getState().running).toBeNull();
+    expect(workbench.notices.getState().notices).toEqual([]);
+  });
+
+  it('leave nothing of the earlier in the workers’ memory', async () => {
+    const { workbench, made } = await openWorkbench();
+    const earlier = workbench.session.getState().scan?.open;
+    await openOffered(workbench, made.inputs, twoBands, '/again.npz');
+    await expect(earlier?.spectrum({ y: 0, x: 0 })).rejects.toThrow();
+    const later = workbench.session.getState().scan?.open;
+    expect(await later?.spectrum({ y: 0, x: 0 })).toHaveLength(made.nk);
   });
 });
 
@@ -189,15 +212,18 @@ describe('a scan whose recipe does not fit it', () => {
     const before = workbench.results.getState().maps;
     const { scan } = workbench.session.getState();
     if (scan === null) throw new Error('no scan');
+    let refused: OpenScan | null = null;
     const opened = await openScan(workbench, {
       inputs: made.inputs,
       plan: scan.open.plan,
       url: null,
-      recipeFor: () => {
+      recipeFor: (open) => {
+        refused = open;
         throw new RimlightError('recipe', { what: 'it does not fit', where: '', hint: 'Mend it.' });
       },
     });
     expect(opened).toBe(false);
+    await expect((refused as OpenScan | null)?.spectrum({ y: 0, x: 0 })).rejects.toThrow();
     expect(workbench.session.getState().scan).toBe(scan);
     expect(workbench.results.getState().maps).toBe(before);
     expect(workbench.session.getState().running).toBeNull();

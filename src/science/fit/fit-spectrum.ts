@@ -294,6 +294,6 @@ export class SpectrumFitter {
  * at most, 0.01 σ for maps: gains fall by the same factor from step to step.
  */
 function isSteadilyNearing(gain: number, gainBefore: number, tolerance: number): boolean {
-  if (!(gain >= 0 && gain < 30 * tolerance && gain < gainBefore)) return false;
+  if (!(gain >= 0 && gain < 10 * tolerance && gain < gainBefore)) return false;
   return (gain * gain) / gainBefore < 0.1 * tolerance;
 }

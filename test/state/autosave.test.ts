@@ -89,6 +89,12 @@ describe('the work of a visit', () => {
     const last = await loadLastWork(storage);
     expect(last?.work.scanName).toBe('made.npz');
     expect(last?.inputs).toBeNull();
+    // Nor with a file of the same name where the page itself offered the scan.
+    await storage.set('last-inputs', made.inputs);
+    await storage.set('last-work', { ...last?.work, url: '/sample-data/made.npz' });
+    expect((await loadLastWork(storage))?.inputs).toBeNull();
+    await storage.set('last-work', { ...last?.work, url: null });
+    expect((await loadLastWork(storage))?.inputs).toEqual(made.inputs);
   });
 
   it('keeps no copy of a file the page can fetch again', async () => {

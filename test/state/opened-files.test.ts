@@ -71,6 +71,29 @@ describe('files given together', () => {
     expect(workbench.recipe.getState().recipe.bands).toEqual(twoBands.bands);
   });
 
+  it('to an open sheet join its scan; with a recipe they are another scan', async () => {
+    const { workbench, made } = await openWorkbench();
+    const scan = made.inputs.scan;
+    if (scan.kind !== 'memory') throw new Error('the made scan lies in memory');
+    const bytes = Uint8Array.from(scan.bytes);
+    const names = (): readonly (string | undefined)[] => {
+      const inputs = workbench.session.getState().draft?.inputs;
+      return [inputs?.scan.name, ...(inputs?.companions ?? []).map(({ name }) => name)];
+    };
+    await openFiles(workbench, [file('first.npz', bytes)]);
+    await openFiles(workbench, [file('height.npy', bytes)]);
+    expect(names()).toEqual(['first.npz', 'height.npy']);
+    // The same file once more takes the place of the one before.
+    await openFiles(workbench, [file('height.npy', bytes)]);
+    expect(names()).toEqual(['first.npz', 'height.npy']);
+    await openFiles(workbench, [
+      file('second.npz', bytes),
+      file('with.recipe.json', serialiseRecipe(twoBands)),
+    ]);
+    expect(names()).toEqual(['second.npz']);
+    expect(workbench.session.getState().draft?.recipe?.bands).toEqual(twoBands.bands);
+  });
+
   it('that are no scan leave the scan on screen, with one sentence', async () => {
     const { workbench } = await openWorkbench();
     const { scan } = workbench.session.getState();

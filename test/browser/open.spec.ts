@@ -16,7 +16,9 @@ test('the demo scan opens by itself, without a fault, asking nobody else for any
   expect([...origins].filter((origin) => origin !== 'null')).toEqual([new URL(page.url()).origin]);
 });
 
-test('the demo answers to the hand on a first visit, and it is told how soon', async ({ browser }) => {
+test('the demo answers to the hand on a first visit, and it is told how soon', async ({
+  browser,
+}) => {
   // What else the machine does is no matter of the program: the quickest of some visits counts.
   const visits = 2;
   const seconds: number[] = [];
